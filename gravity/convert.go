@@ -51,7 +51,7 @@ func (c Converter) Convert(scale Scale, v float64, pair Pair) (Figures, error) {
 	var err error
 	switch scale {
 	case ScalePlato, ScaleBrix:
-		f.Extract = Plato(v)
+		f.Extract = Plato(v) + 0 // -0 becomes 0
 		f.SG, err = fit.SG(f.Extract)
 		f.Density = sps4At20.Density(f.Extract)
 	case ScaleGPL:
@@ -77,6 +77,24 @@ func (c Converter) Convert(scale Scale, v float64, pair Pair) (Figures, error) {
 	}
 	f.GPL = ExtractGPL(f.Extract, f.Density)
 	return f, c.derive(&f)
+}
+
+// ConvertFermented is Convert for a liquid of original extract oe [% mass] that
+// has fermented: a relative density on a pair other than 20/20 is brought there
+// as the fermented mixture instead of as a sucrose solution.
+func (c Converter) ConvertFermented(scale Scale, v float64, pair Pair, oe Plato) (Figures, error) {
+	fn, relative := RelativeScale(scale, c.Modulus)
+	if !relative || pair == Pair2020 && fn.Pair == Pair2020 {
+		return c.Convert(scale, v, pair)
+	}
+	if fn.Pair != Pair2020 {
+		pair = fn.Pair
+	}
+	s, err := Relative{fn.SG(v), pair}.FermentedSG(oe)
+	if err != nil {
+		return Figures{}, err
+	}
+	return c.Convert(ScaleSG, float64(s), Pair2020)
 }
 
 // derive fills the scales that are formulas of SG.

@@ -75,13 +75,13 @@ var Fits = method.Set[Fit]{
 	{Info: method.Info{
 		ID: "balling", Kind: "fit", Name: "Balling's hyperbola, 17.5 °C basis, historic",
 		Source: method.Source{Author: "Balling", Year: 1865, Where: "Die Bierbrauerei", Status: method.Quoted},
-		Valid:  fitRange(0.98, 1.1057), Error: "-0.16 °P at 25 °P against " + c440,
+		Valid:  fitRange(0.98, 1.1057), Error: "-0.09 °P at 20 °P, -0.16 at 25 against " + c440,
 		Check: c440, Use: "old records; takes the number as it stands", Better: "nbs",
 	}, Fn: Fit{Extract: BallingExtract, SG: ballingSG}},
 	{Info: method.Info{
 		ID: "sps4", Kind: "fit", Name: "sucrose density model inverted at 20 °C",
 		Source: method.Source{Author: "ICUMSA", Where: "Methods Book SPS-4, true density at 20 °C", Status: method.Quoted},
-		Valid:  fitRange(0.98, 1.43), Error: "0.012 °Bx at 20, 0.014 at 30, 0.020 at 40 against " + c440 + " in air",
+		Valid:  fitRange(0.98, 1.43), Error: "0.012 °Bx at 20, 0.018 at 30, 0.022 at 40, 0.033 at 60 against " + c440 + " in air",
 		Check: c440 + ", CRC densities", Use: "true relative density; syrups and strong musts",
 	}, Fn: Fit{Extract: sps4Extract, SG: sps4SG}},
 }
@@ -160,6 +160,10 @@ func sps4Extract(s SG) Plato {
 }
 
 func sps4SG(p Plato) (SG, error) {
+	// Far outside, the polynomial comes back to densities that liquids have.
+	if !(p >= 100*minSucrose && p <= 100*maxSucrose) {
+		return 0, extractError(p, sps4Extract)
+	}
 	return within(p, float64(sps4At20.Density(p)/sps4At20.Water()), sps4Extract)
 }
 

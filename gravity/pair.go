@@ -35,6 +35,26 @@ func (r Relative) MixtureOn(pair Pair, m Mixture) Relative {
 	return RelativeOf(r.Density()*ratio, pair)
 }
 
+// FermentedSG returns r on the pair 20/20 °C for a liquid of original extract oe
+// [% mass] that has fermented: its composition follows from its own apparent
+// extract by the default fit. It returns a *method.RangeError for a density that
+// no such liquid has.
+func (r Relative) FermentedSG(oe Plato) (SG, error) {
+	s, err := r.SG()
+	if err != nil || r.Pair == Pair2020 {
+		return s, err
+	}
+	fit := Fits.Default().Fn
+	for range 40 {
+		next := SG(r.MixtureOn(Pair2020, Fermented(oe, fit.Extract(s))).Value)
+		if d := next - s; d < 1e-12 && d > -1e-12 {
+			break
+		}
+		s = next
+	}
+	return s, CheckSG(s)
+}
+
 // Density returns the density [kg/m³] at the pair's sample temperature, with the
 // water of the sucrose model.
 func (r Relative) Density() Density { return Density(r.Value) * Kell(r.Pair.Water) }

@@ -74,7 +74,11 @@ func sgOfPoints(v float64) float64 { return 1 + v/1000 }
 // Source: Ambrosi 1994, Wein A bis Z.
 func OechsleOfKMW(k float64) float64 { return k * (0.022*k + 4.54) }
 
-func sgOfKMW(k float64) float64 { return sgOfPoints(OechsleOfKMW(k)) }
+// kmwVertex is where the quadratic turns; below it a KMW would come back as a
+// must weight that liquids have.
+const kmwVertex = -4.54 / 0.044
+
+func sgOfKMW(k float64) float64 { return sgOfPoints(OechsleOfKMW(max(k, kmwVertex))) }
 
 // kmwOf solves 0.022 K² + 4.54 K = Oe; real above -234 °Oe, far below any liquid
 // of the trade.

@@ -28,11 +28,12 @@ var SucroseDensities = method.Set[SucroseFunc]{
 // sucrose solutions was found to check the model against.
 const TableCheckedTo Celsius = 31
 
-// Fitted range of the sucrose model, as mass fractions; below zero it is
-// extrapolated, which is where dry ferments lie.
+// Range in which the sucrose model is used, as mass fractions. It was fitted on 0
+// to 0.85; below zero it is extrapolated, which is where dry ferments lie, and
+// the last hundredth takes in MaxSG.
 const (
 	minSucrose = -0.30
-	maxSucrose = 0.85
+	maxSucrose = 0.86
 )
 
 // sps4 holds the coefficients c_ik, i the power of (t-20)/100, k that of w.
@@ -67,6 +68,14 @@ func sucroseAt(coefficients *[5][7]float64, t Celsius) SucroseIsotherm {
 	return iso
 }
 
+// Coefficients returns water [kg/m³] and the six coefficients of w at this
+// temperature.
+func (s *SucroseIsotherm) Coefficients() []float64 { return append([]float64(nil), s.c[:]...) }
+
+// SucroseCoefficients returns the published c_ik, row i for ((t-20)/100)^i,
+// column k for w^k. Source: ICUMSA SPS-4.
+func SucroseCoefficients() [5][7]float64 { return sps4 }
+
 // Water returns the density of water of the same model [kg/m³].
 func (s *SucroseIsotherm) Water() Density { return Density(s.c[0]) }
 
@@ -89,8 +98,7 @@ const extractTolerance = 1e-13
 
 // Extract returns the sucrose content [% mass] that gives density rho [kg/m³] at
 // this temperature; below water it is negative and extrapolated. It returns a
-// *method.RangeError for a density no solution of 0 to 85 % (or its
-// extrapolation to -30 %) has.
+// *method.RangeError for a density no solution of -30 to 86 % has.
 func (s *SucroseIsotherm) Extract(rho Density) (Plato, error) {
 	// Newton from a secant guess; the model is monotone on the whole range.
 	w := (float64(rho) - s.c[0]) / (s.c[1] + s.c[2]*0.2)

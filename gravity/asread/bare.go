@@ -51,13 +51,13 @@ func bareSG(in string, v Value) (Reading, error) {
 		return accept(in, v, d, gravity.ScaleSG)
 
 	case whole && within(d, wholeLo, wholeHi):
-		return accept(in, v, shift(d, -3), gravity.ScaleSG)
+		return accept(in, v, d.Shift(-3), gravity.ScaleSG)
 
 	case whole && unsigned && d.Cmp(pointsHi) <= 0:
-		return accept(in, v, one.Add(shift(d, -3)), gravity.ScaleSG)
+		return accept(in, v, one.Add(d.Shift(-3)), gravity.ScaleSG)
 
 	case within(d, wholeLo, wholeHi):
-		ps.addBare(shift(d, -3))
+		ps.addBare(d.Shift(-3))
 		ps.add(d, gravity.ScaleDensity)
 		return doubt(in, "wanted the scale", wantedSG, ps)
 
@@ -71,7 +71,7 @@ func bareSG(in string, v Value) (Reading, error) {
 
 	case whole && unsigned, d.Cmp(wholeHi) > 0:
 		ps.add(d, gravity.ScalePoints)
-		ps.add(shift(d, -3), gravity.ScaleSG)
+		ps.add(d.Shift(-3), gravity.ScaleSG)
 		ps.add(d, gravity.ScaleDensity)
 		return refuse(in, wantedSG, ps)
 	}
@@ -85,7 +85,7 @@ func lowSG(v Value) proposals {
 	var ps proposals
 	d := v.dec
 	if v.Places() == 2 && d.Cmp(nineTenths) >= 0 {
-		ps.addBare(shift(d.Sub(nineTenths), -1).Add(decimal.New(99, -2)))
+		ps.addBare(d.Sub(nineTenths).Shift(-1).Add(decimal.New(99, -2)))
 	}
 	if v.Places() >= 3 && within(one.Add(d), sgLo, sgHi) {
 		ps.addBare(one.Add(d))
@@ -111,7 +111,7 @@ func bareMass(in string, v Value, s gravity.Scale) (Reading, error) {
 		return accept(in, v, d, s)
 	}
 	if within(d, wholeLo, wholeHi) {
-		ps.add(shift(d, -3), gravity.ScaleSG)
+		ps.add(d.Shift(-3), gravity.ScaleSG)
 		if v.Places() > 0 {
 			ps.add(d, gravity.ScaleDensity)
 		}
@@ -124,5 +124,5 @@ func bareMass(in string, v Value, s gravity.Scale) (Reading, error) {
 
 // zeroAfterPoint puts back a lost zero: 1.16 becomes 1.016. d lies between 1 and 2.
 func zeroAfterPoint(d decimal.Decimal) decimal.Decimal {
-	return one.Add(shift(d.Sub(one), -1))
+	return one.Add(d.Sub(one).Shift(-1))
 }

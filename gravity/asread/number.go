@@ -34,16 +34,6 @@ func digits(d decimal.Decimal) string { return d.StringFixed(-d.Exponent()) }
 
 func step(d decimal.Decimal) float64 { return decimal.New(1, d.Exponent()).InexactFloat64() }
 
-// shift moves the decimal point n places to the right and keeps the typed
-// digits; a point moved past the last digit fills up with zeros.
-func shift(d decimal.Decimal, n int32) decimal.Decimal {
-	s := d.Shift(n)
-	if s.Exponent() > 0 {
-		return s.Add(decimal.Zero) // addition brings both to the smaller exponent, 0
-	}
-	return s
-}
-
 // ParseNumber reads a plain decimal number: an optional sign (also U+2212),
 // ASCII digits, at most one decimal mark (point or comma), or thousands groups
 // together with the other mark ("1,048.5", "1.048,5"). It refuses exponents,

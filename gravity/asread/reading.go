@@ -58,7 +58,11 @@ func ParseReading(text string, def gravity.Scale) (Reading, error) {
 	}
 	s, ok := spellings[unit]
 	if !ok {
-		return Reading{}, &Refusal{Read: in, Wanted: "a known scale behind the number", Advice: suffixHelp}
+		wanted := "a known scale behind the number"
+		if _, temperature := temperatureUnits[unit]; temperature {
+			wanted = "a gravity, not a temperature"
+		}
+		return refuse(in, wanted, nil)
 	}
 	return stated(in, v, s)
 }
@@ -97,7 +101,7 @@ func stated(in string, v Value, s gravity.Scale) (Reading, error) {
 	var ps proposals
 	switch d := v.dec; {
 	case s == gravity.ScaleSG:
-		ps.add(shift(d, -3), gravity.ScaleSG)
+		ps.add(d.Shift(-3), gravity.ScaleSG)
 		if d.Cmp(one) > 0 && d.Cmp(two) < 0 {
 			ps.add(zeroAfterPoint(d), gravity.ScaleSG)
 		}
@@ -105,10 +109,10 @@ func stated(in string, v Value, s gravity.Scale) (Reading, error) {
 			ps.add(d, gravity.ScalePoints)
 		}
 	case s == gravity.ScaleDensity && d.Sign() > 0 && d.Cmp(two) < 0:
-		ps.add(shift(d, 3), gravity.ScaleDensity)
+		ps.add(d.Shift(3), gravity.ScaleDensity)
 	default:
-		if within(shift(d, -3), sgLo, sgHi) {
-			ps.add(shift(d, -3), gravity.ScaleSG)
+		if within(d.Shift(-3), sgLo, sgHi) {
+			ps.add(d.Shift(-3), gravity.ScaleSG)
 		}
 		ps.add(d, gravity.ScalePoints)
 	}

@@ -33,7 +33,7 @@ func Round(x float64, places int, rule Rule) float64 {
 }
 
 // Fixed returns x rounded as Round does and printed with exactly places
-// decimals, never "-0.00"; "—" if x is not finite.
+// decimals (at most 1100), never "-0.00"; "—" if x is not finite.
 func Fixed(x float64, places int, rule Rule) string {
 	if !finite(x) {
 		return noNumber

@@ -112,7 +112,7 @@ func (i Info) InRange(values ...float64) []Note {
 		}
 		r := i.Valid[k]
 		text := fmt.Sprintf("%s: %s %s is outside the fitted range %s to %s %s",
-			i.ID, r.Of, num(v), num(r.Lo), num(r.Hi), r.Unit)
+			i.ID, r.Of, brief(v), num(r.Lo), num(r.Hi), r.Unit)
 		if i.Better != "" {
 			text += "; " + i.Better + " serves there"
 		}
@@ -205,3 +205,6 @@ func num(x float64) string {
 	}
 	return s
 }
+
+// brief prints five significant digits, enough for an SG in a note.
+func brief(x float64) string { return strconv.FormatFloat(x, 'g', 5, 64) }
