@@ -90,7 +90,12 @@ func budget(h Hydrometer, o Observation, m method.Entry[Func], mark float64, w w
 	}
 	b.Standard = math.Sqrt(sum)
 	b.Record = h.ID != "" && (h.MaxError > 0 || len(h.Certificate) > 0)
-	if floor := usersFloor * 1000 * math.Abs(point); b.Record && 2*b.Standard < floor {
+	// The floor is relative to the density, so it grows with it.
+	r, err := f.relative(mark)
+	if err != nil {
+		return Budget{}, err
+	}
+	if floor := usersFloor * 1000 * r * math.Abs(point); b.Record && 2*b.Standard < floor {
 		b.Standard, b.Floor = floor/2, true
 	}
 	b.Expanded = 2 * b.Standard

@@ -152,6 +152,11 @@ func (res *Result) figures(f Float, mark float64, s Sample) error {
 	return gravity.CheckSG(res.SG)
 }
 
+// sweetAlcohol [% mass] is where a liquid outside Tabarié's band is worth a note.
+// Every wort passes through real extracts above 5 % while it ferments; with less
+// alcohol the ratio of densities hardly feels it (judged).
+const sweetAlcohol gravity.MassPct = 8
+
 // notes collects what travels with the value.
 func (res *Result) notes(h Hydrometer, o Observation, meniscusAssumed bool) []method.Note {
 	var notes []method.Note
@@ -171,7 +176,7 @@ func (res *Result) notes(h Hydrometer, o Observation, meniscusAssumed bool) []me
 	if res.Method.ID == "fermenting" {
 		if res.Mixture.Alcohol == 0 {
 			add(method.NoAlcohol, "the corrected value is not below the OG: corrected as unfermented")
-		} else {
+		} else if res.Mixture.Alcohol >= sweetAlcohol {
 			notes = append(notes, gravity.TabarieInfo.InRange(float64(res.Mixture.Extract), float64(res.Mixture.Alcohol))...)
 		}
 	}

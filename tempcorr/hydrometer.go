@@ -98,6 +98,9 @@ func (f Float) Mark(rho gravity.Density) (float64, error) {
 // shift returns what a change of points (0.001 of the relative density, or of
 // the density over water) makes on the scale at v.
 func (f Float) shift(v, points float64) (float64, error) {
+	if points == 0 {
+		return 0, nil
+	}
 	rho, err := f.MarkDensity(v)
 	if err != nil {
 		return 0, err
