@@ -1,0 +1,115 @@
+package main
+
+import (
+	"context"
+	"fmt"
+	"io"
+	"os"
+	"strings"
+
+	"github.com/urfave/cli/v2"
+	"golang.org/x/term"
+)
+
+// bench is one run of the program: its streams, its settings and the errors that
+// it has shown.
+type bench struct {
+	in       io.Reader
+	out, err io.Writer
+	set      settings
+}
+
+// run is the whole program. It returns the exit code.
+func run(ctx context.Context, args []string, in io.Reader, out, errOut io.Writer) int {
+	b := &bench{in: in, out: out, err: errOut}
+	app := b.app()
+	line, err := arrange(args, app.Commands)
+	if err == nil {
+		err = app.RunContext(ctx, append([]string{app.Name}, line...))
+	}
+	if err == nil {
+		err = ctx.Err()
+	}
+	return failure(errOut, err)
+}
+
+func (b *bench) app() *cli.App {
+	app := &cli.App{
+		Name:                  "gylebook",
+		Usage:                 "hydrometer readings, corrected, converted and explained",
+		Version:               version(),
+		Reader:                b.in,
+		Writer:                b.out,
+		ErrWriter:             b.err,
+		HideHelpCommand:       true,
+		CustomAppHelpTemplate: appHelp,
+		ExitErrHandler:        func(*cli.Context, error) {},
+		OnUsageError:          onUsage,
+		Commands: []*cli.Command{
+			b.correctCommand(), b.convertCommand(), b.abvCommand(), b.attenuationCommand(),
+			b.refractometerCommand(), b.tableCommand(), b.sourcesCommand(), b.selfcheckCommand(),
+		},
+	}
+	app.Action = func(c *cli.Context) error {
+		if c.Args().Len() == 0 {
+			return cli.ShowAppHelp(c)
+		}
+		return unknownCommand(c.Args().First(), app.Commands)
+	}
+	return app
+}
+
+// command completes a command: global flags, help, settings, usage errors.
+func (b *bench) command(cmd *cli.Command, examples string, action func(*cli.Context) error) *cli.Command {
+	own := cmd.Flags
+	cmd.Flags = append(append([]cli.Flag{}, own...), globalFlags()...)
+	cmd.CustomHelpTemplate = commandHelp(cmd, own, examples)
+	cmd.OnUsageError = onUsage
+	cmd.HideHelpCommand = true
+	cmd.Action = func(c *cli.Context) error {
+		var err error
+		if b.set, err = readSettings(c, b.out); err != nil {
+			return err
+		}
+		return action(c)
+	}
+	return cmd
+}
+
+// onUsage turns the parser's error into ours, in our voice.
+func onUsage(c *cli.Context, err error, _ bool) error {
+	text := strings.ReplaceAll(err.Error(), "flag provided but not defined: -", "unknown flag --")
+	text = strings.ReplaceAll(text, "flag needs an argument: -", "a value is missing after --")
+	text = strings.ReplaceAll(text, "----", "--")
+	hint := "gylebook --help lists the commands"
+	if c.Command != nil && c.Command.Name != "" && c.Command.Name != "gylebook" {
+		hint = "gylebook " + c.Command.Name + " --help lists the flags"
+	}
+	return usageError(hint, "%s", text)
+}
+
+func unknownCommand(name string, commands []*cli.Command) error {
+	names := make([]string, len(commands))
+	for i, c := range commands {
+		names[i] = c.Name
+	}
+	return usageError("gylebook --help shows an example of each",
+		"unknown command %.40q, known: %s", name, strings.Join(names, ", "))
+}
+
+// interactive reports whether a person sits at stdin. Prompts go to stderr.
+func (b *bench) interactive() bool {
+	f, ok := b.in.(*os.File)
+	return ok && !b.set.noInput && term.IsTerminal(int(f.Fd()))
+}
+
+// missing is the one-line usage hint for values that are not there.
+func missing(cmd *cli.Command, what string) error {
+	return usageError("", "%s is missing; usage: gylebook %s %s", what, cmd.Name, cmd.ArgsUsage)
+}
+
+func (b *bench) note(format string, args ...any) {
+	if !b.set.quiet {
+		fmt.Fprintf(b.err, format+"\n", args...)
+	}
+}

@@ -1,0 +1,105 @@
+package main
+
+import (
+	"fmt"
+	"math"
+	"strconv"
+
+	"github.com/urfave/cli/v2"
+
+	"gylebook/gravity"
+	"gylebook/gravity/asread"
+	"gylebook/gravity/method"
+	"gylebook/tables"
+	"gylebook/tempcorr"
+)
+
+// temperatureMarks are the readings over the columns of a temperature chart.
+var temperatureMarks = map[gravity.Scale][]float64{
+	gravity.ScaleSG:       {1.000, 1.020, 1.040, 1.060, 1.080, 1.100},
+	gravity.ScalePlato:    {0, 5, 10, 15, 20, 25},
+	gravity.ScaleBrix:     {0, 5, 10, 15, 20, 25},
+	gravity.ScalePoints:   {0, 20, 40, 60, 80, 100},
+	gravity.ScaleOechsle:  {0, 20, 40, 60, 80, 100},
+	gravity.ScaleKMW:      {0, 4, 8, 12, 16, 20},
+	gravity.ScaleBaume:    {0, 2, 4, 6, 8, 10, 12},
+	gravity.ScaleTwaddell: {0, 4, 8, 12, 16, 20},
+	gravity.ScaleDensity:  {1000, 1020, 1040, 1060, 1080, 1100},
+}
+
+func (b *bench) temperatureChart(c *cli.Context) (sheet, error) {
+	r, err := b.readerOf(c)
+	if err != nil {
+		return sheet{}, err
+	}
+	m, err := tempcorr.Methods.Find(r.method)
+	if err != nil {
+		return sheet{}, err
+	}
+	def := span{5, 35, 1}
+	if b.set.units == asread.F {
+		def = span{40, 96, 2}
+	}
+	rows, err := spanOf(c, def, func(text string) (float64, error) {
+		t, err := b.temperature(text)
+		if b.set.units == asread.F {
+			return t.C.Fahrenheit(), err
+		}
+		return float64(t.C), err
+	})
+	if err != nil {
+		return sheet{}, err
+	}
+	scale := b.set.scale
+	f := tempcorr.Float{Scale: scale, Basis: r.basis, Expansion: r.body.Expansion}
+	s := sheet{name: "table", columns: []string{"sample_temp_c"}}
+	p := scale.Info().Decimals
+	head := "°C"
+	if b.set.units == asread.F {
+		head = "°F"
+	}
+	t := tables.Table{
+		Title:   fmt.Sprintf("add to a reading in %s %s, %s", scale.Info().Symbol, r.basis, r.body.ID),
+		Columns: []tables.Column{{Head: head, Align: tables.Right}},
+		Foot:    []string{fmt.Sprintf("%s (%s); best between 15 and 25 °C; instrument error not included", m.ID, m.Source.Where)},
+	}
+	marks := temperatureMarks[scale]
+	if len(marks) == 0 {
+		return s, usageError("", "--scale: read %s, wanted a scale that a hydrometer is divided in", scale)
+	}
+	for _, mark := range marks {
+		text := strconv.FormatFloat(mark, 'f', -1, 64)
+		if scale == gravity.ScaleSG {
+			text = fixed(mark, 3)
+		}
+		s.columns = append(s.columns, "correction_at_"+text)
+		t.Columns = append(t.Columns, tables.Column{Head: text, Align: tables.Right})
+	}
+	err = rows.each(func(v float64) error {
+		temp := gravity.Celsius(v)
+		if b.set.units == asread.F {
+			temp = gravity.FromFahrenheit(v)
+		}
+		if temp < tempcorr.MinTemp || temp > tempcorr.MaxTemp {
+			return &method.RangeError{What: "sample temperature", Got: float64(temp), Lo: 0, Hi: 60, Unit: "°C"}
+		}
+		values := []any{float64(temp)}
+		cells := []string{fixed(v, 0)}
+		if v != math.Trunc(v) {
+			cells[0] = fixed(v, 1)
+		}
+		for _, mark := range marks {
+			got, err := m.Fn(f, mark, tempcorr.Sample{T: temp, OE: r.oe})
+			if err != nil {
+				return err
+			}
+			values = append(values, got-mark)
+			cells = append(cells, asread.Signed(got-mark, p))
+		}
+		s.records = append(s.records, record(s.columns, values))
+		t.Rows = append(t.Rows, cells)
+		return nil
+	})
+	s.tables = []tables.Table{t}
+	return s, err
+}
