@@ -35,7 +35,7 @@ func Attenuate(g Gravities) (Attenuation, error) {
 		Real:            degree(g.OE, m.Extract),
 		RDF:             RDF(m.Alcohol, m.Extract),
 		ABW:             m.Alcohol,
-		ABV:             volume(m.Alcohol, g.FG),
+		ABV:             VolumeOf(m.Alcohol, g.FG),
 		EnergyKcal100mL: Energy(m.Alcohol, m.Extract, g.FG),
 		ResidualGPL:     Residual(m.Extract, g.FG),
 	}, nil

@@ -33,6 +33,11 @@ func ExplainAlcohol(g Gravities, e Estimate) []string {
 	if e.Alcohol.ABW != nil {
 		out = append(out, fmt.Sprintf("alcohol %.5f %% mass", float64(*e.Alcohol.ABW)))
 	}
+	if e.Info.ID == idUKDuty {
+		if points, factor, err := DutyFactor(g.OG, g.FG); err == nil {
+			out = append(out, fmt.Sprintf("difference %.1f points, factor of its band %.3f", points, factor))
+		}
+	}
 	return append(out, fmt.Sprintf("alcohol %.5f %% vol at 20 °C", float64(e.Alcohol.ABV)))
 }
 

@@ -43,7 +43,13 @@ const MinExtract gravity.Plato = 0.1
 var (
 	ErrOrder     = errors.New("present gravity is not below the original gravity")
 	ErrNoExtract = errors.New("no original extract")
+	ErrTooLow    = errors.New("more fermented than there was extract")
 )
+
+// MinRealExtract is the real extract [% mass] below which two gravities cannot
+// belong together: no liquid holds less than none, and what readings and the
+// attenuation quotient leave in doubt is less than half a degree (judged).
+const MinRealExtract gravity.Plato = -0.5
 
 // pairHint is what to look at when two gravities do not go together.
 const pairHint = "swapped values, or an addition of sugar or wort that is missing from the original gravity?"
@@ -80,10 +86,31 @@ func (e *NoExtractError) Unwrap() error { return ErrNoExtract }
 // Hint says what to look at.
 func (e *NoExtractError) Hint() string { return pairHint }
 
+// OverfermentedError says that the gravities would leave less than no extract. It
+// wraps ErrTooLow.
+type OverfermentedError struct {
+	OG, FG gravity.SG
+	RE     gravity.Plato
+}
+
+func (e *OverfermentedError) Error() string {
+	return fmt.Sprintf("present gravity %.4f from original %.4f would leave a real extract of %s %%, wanted at least %s %%",
+		float64(e.FG), float64(e.OG), asread.Fixed(float64(e.RE), 2, asread.HalfEven), asread.Fixed(float64(MinRealExtract), 1, asread.HalfEven))
+}
+
+// Unwrap returns ErrTooLow.
+func (e *OverfermentedError) Unwrap() error { return ErrTooLow }
+
+// Hint says what to look at.
+func (e *OverfermentedError) Hint() string {
+	return "wrong tank, a hot sample, an original gravity read too low, or an addition that is missing from it?"
+}
+
 // Check returns nil for gravities that a fermentation can have. Otherwise it
 // returns a *method.RangeError (an SG that no liquid of the trade has), a
-// *NoExtractError (original extract below MinExtract) or an *OrderError (present
-// gravity not below the original), the first that applies.
+// *NoExtractError (original extract below MinExtract), an *OrderError (present
+// gravity not below the original) or an *OverfermentedError (more gone than there
+// was), the first that applies.
 func (g Gravities) Check() error {
 	if err := g.possible(); err != nil {
 		return err
@@ -93,6 +120,9 @@ func (g Gravities) Check() error {
 	}
 	if !(g.FG < g.OG && g.AE < g.OE) {
 		return &OrderError{g.OG, g.FG}
+	}
+	if re := gravity.RealExtract(g.OE, g.AE); re < MinRealExtract {
+		return &OverfermentedError{g.OG, g.FG, re}
 	}
 	return nil
 }

@@ -1,6 +1,9 @@
 package attenuation
 
-import "gylebook/gravity"
+import (
+	"gylebook/gravity"
+	"gylebook/gravity/asread"
+)
 
 // water20 is the density of water at 20 °C [kg/m³] that alcohol by volume and
 // extract per litre are taken with, in the two digits that the trade carries.
@@ -9,14 +12,14 @@ const water20 = 998.2
 // beerDensity returns the density [kg/m³ at 20 °C] of a liquid of SG fg.
 func beerDensity(fg gravity.SG) gravity.Density { return gravity.Density(fg * water20) }
 
-// volume returns ethanol [% vol at 20 °C] of a [% mass] in a liquid of SG fg.
-func volume(a gravity.MassPct, fg gravity.SG) gravity.VolPct {
+// VolumeOf returns ethanol [% vol at 20 °C] of a [% mass] in a liquid of SG fg.
+func VolumeOf(a gravity.MassPct, fg gravity.SG) gravity.VolPct {
 	return gravity.VolPct(float64(a) * float64(beerDensity(fg)/gravity.PureEthanol20))
 }
 
 // byMass completes an alcohol by mass with its volume and the real extract.
 func byMass(a gravity.MassPct, re gravity.Plato, fg gravity.SG) Alcohol {
-	return Alcohol{ABV: volume(a, fg), ABW: &a, RE: &re}
+	return Alcohol{ABV: VolumeOf(a, fg), ABW: &a, RE: &re}
 }
 
 // balling is the default: real extract through the attenuation quotient, alcohol
@@ -65,11 +68,16 @@ func mead132(g Gravities) (Alcohol, error) {
 	return byFactor(g, 132)
 }
 
+// exactPlaces is beyond what a float64 of an SG holds.
+const exactPlaces = 17
+
 func byFactor(g Gravities, f float64) (Alcohol, error) {
 	if err := g.fermentable(); err != nil {
 		return Alcohol{}, err
 	}
-	return Alcohol{ABV: gravity.VolPct(f * float64(g.OG-g.FG))}, nil
+	// In decimal: a declared figure is cut from it, and a tie must be a tie.
+	diff := asread.RoundDiff(float64(g.OG), float64(g.FG), 1, exactPlaces, asread.HalfEven)
+	return Alcohol{ABV: gravity.VolPct(asread.Product(f, diff))}, nil
 }
 
 // hall1995 is alcohol by mass from two gravities, with ethanol of 0.794 relative

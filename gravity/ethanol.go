@@ -69,6 +69,10 @@ func EthanolAt(t Celsius) EthanolIsotherm {
 	return iso
 }
 
+// Coefficients returns the twelve coefficients of the powers of the mass fraction
+// at this temperature, water [kg/m³] first.
+func (e *EthanolIsotherm) Coefficients() []float64 { return append([]float64(nil), e.c[:]...) }
+
 // Water returns the density of water of the same model [kg/m³].
 func (e *EthanolIsotherm) Water() Density { return Density(e.c[0]) }
 

@@ -93,9 +93,26 @@ func jsonValue(b *bytes.Buffer, f Field) error {
 			parts[i] = quote(s)
 		}
 		b.WriteString("[" + strings.Join(parts, ",") + "]")
+	case []Record:
+		return jsonRecords(b, f.Name, v)
 	default:
 		return errValue(f)
 	}
+	return nil
+}
+
+// jsonRecords writes the records that stand inside the field called name.
+func jsonRecords(b *bytes.Buffer, name string, records []Record) error {
+	b.WriteByte('[')
+	for i, r := range records {
+		if i > 0 {
+			b.WriteByte(',')
+		}
+		if err := jsonRecord(b, r); err != nil {
+			return fmt.Errorf("%s %d: %w", name, i+1, err)
+		}
+	}
+	b.WriteByte(']')
 	return nil
 }
 

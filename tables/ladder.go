@@ -17,6 +17,9 @@ type Ladder struct {
 	Lines  []string // free lines below, each wrapped
 }
 
+// minRemark is the width below which a column of remarks is not worth having.
+const minRemark = 20
+
 // WriteText writes the answer, a blank line and the rungs in three columns. Below
 // 60 columns it is stacked.
 func (l Ladder) WriteText(w io.Writer, width int) error {
@@ -25,7 +28,14 @@ func (l Ladder) WriteText(w io.Writer, width int) error {
 		return l.stack(w, width)
 	}
 	var b bytes.Buffer
-	hang(&b, strings.Join(l.Answer, "   "), width)
+	// Parts that do not fit on one line together stand on one each.
+	if line := strings.Join(l.Answer, "   "); Width(line) <= width {
+		b.WriteString(line + "\n")
+	} else {
+		for _, part := range l.Answer {
+			hang(&b, part, width)
+		}
+	}
 	if len(l.Rungs) > 0 {
 		b.WriteByte('\n')
 	}
@@ -33,6 +43,9 @@ func (l Ladder) WriteText(w io.Writer, width int) error {
 	for _, r := range l.Rungs {
 		name = max(name, Width(r.Name))
 		value = max(value, Width(signed(r.Value)))
+	}
+	if width < 2+name+2+value+3+minRemark {
+		return l.stack(w, width)
 	}
 	for _, r := range l.Rungs {
 		left := "  " + pad(r.Name, name) + "  " + signed(r.Value)

@@ -15,8 +15,9 @@ type Note struct {
 }
 
 // Field is one named value of a record. Value holds a string, bool, int,
-// float64, *float64, []Note, []string or nil; anything else is refused when the
-// record is written. A nil pointer, NaN and an infinity count as nil.
+// float64, *float64, []Note, []string, []Record or nil; anything else is refused
+// when the record is written. A nil pointer, NaN and an infinity count as nil.
+// Records inside a record are for JSON alone: CSV has no place for them.
 type Field struct {
 	Name  string
 	Value any
@@ -101,7 +102,7 @@ func texts(notes []Note) string {
 }
 
 func errValue(f Field) error {
-	return fmt.Errorf("field %q holds a %T, wanted string, bool, int, float64, *float64, []Note, []string or nil", f.Name, f.Value)
+	return fmt.Errorf("field %q holds a %T, wanted string, bool, int, float64, *float64, []Note, []string, []Record (in JSON) or nil", f.Name, f.Value)
 }
 
 // writeAll hands b to w whole and takes a short write for an error.

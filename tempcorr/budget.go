@@ -74,8 +74,7 @@ func budget(h Hydrometer, o Observation, m method.Entry[Func], mark float64, w w
 	}
 	rect("thermometer", "°C", tu, slopeT, false, "")
 	rect("body expansion", "1/K", h.Body.ExpansionU, slopeG, true, h.Body.ID)
-	model := map[string]float64{"sucrose": modelSucrose, "fermenting": modelFermenting, "lyons1992": modelLyons}[m.ID]
-	rect("model", "points", model, point, true, m.ID)
+	rect("model", "points", modelHalfWidth(m.ID, o.T), point, true, m.ID)
 	rect("meniscus", "points", w.meniscus, point*slopeR, true, "")
 	rect("surface tension", "points", w.tension, point*slopeR, true, "")
 	rect("maximum error", h.Scale.Info().Symbol, h.MaxError, slopeR, true, "of the instrument")
@@ -100,6 +99,14 @@ func budget(h Hydrometer, o Observation, m method.Entry[Func], mark float64, w w
 	}
 	b.Expanded = 2 * b.Standard
 	return b, nil
+}
+
+// modelHalfWidth returns what the model of a method leaves over at t, in points.
+// Above the highest temperature of any published table it grows by a tenth of
+// itself per °C (judged).
+func modelHalfWidth(id string, t gravity.Celsius) float64 {
+	points := map[string]float64{"sucrose": modelSucrose, "fermenting": modelFermenting, "lyons1992": modelLyons}[id]
+	return points * (1 + 0.1*max(0, float64(t-gravity.TableCheckedTo)))
 }
 
 // slopes returns the change of the corrected value per unit of reading, per °C

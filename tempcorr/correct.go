@@ -17,6 +17,7 @@ type Observation struct {
 	ReadAt  Meniscus        // "" is where the scale is meant to be read
 	OE      gravity.Plato   // original extract, % mass; 0 when not known
 	Method  string          // id of a correction; "" picks by OE
+	Plain   bool            // leave the uncertainty budget out, which is most of the work
 }
 
 // Result is a corrected reading with every step on its own, in the scale of the
@@ -81,6 +82,9 @@ func Correct(h Hydrometer, o Observation) (Result, error) {
 		return Result{}, err
 	}
 	res.Notes = append(notes, res.notes(h, o, assumed)...)
+	if o.Plain {
+		return res, nil
+	}
 	res.Budget, err = budget(h, o, m, mark, widths{meniscusU, certU, tensionU})
 	return res, err
 }
@@ -175,7 +179,7 @@ func (res *Result) notes(h Hydrometer, o Observation, meniscusAssumed bool) []me
 	}
 	if res.Method.ID == "fermenting" {
 		if res.Mixture.Alcohol == 0 {
-			add(method.NoAlcohol, "the corrected value is not below the OG: corrected as unfermented")
+			add(method.NoAlcohol, "the corrected value is not below the original gravity: corrected as unfermented; wrong tank, or an original gravity in another scale (12P)?")
 		} else if res.Mixture.Alcohol >= sweetAlcohol {
 			notes = append(notes, gravity.TabarieInfo.InRange(float64(res.Mixture.Extract), float64(res.Mixture.Alcohol))...)
 		}

@@ -36,6 +36,10 @@ func Explain(h Hydrometer, o Observation, res Result) []string {
 		out = append(out, explainSucrose(f, o, liquid)...)
 	}
 	add("corrected = %.6f, a temperature correction of %+.6f", res.Corrected, res.Temperature)
+	if !h.Scale.IsMass() {
+		fit := gravity.Fits.Default()
+		add("°P from the corrected SG 20/20 %.6f by %s: %.4f (the trade's table, in air; the solved w is by true density)", float64(res.SG), fit.ID, float64(res.Extract))
+	}
 	return append(out, explainBudget(h, res)...)
 }
 
@@ -47,7 +51,7 @@ func explainSucrose(f Float, o Observation, liquid float64) []string {
 	}
 	return []string{
 		"sucrose density (ICUMSA SPS-4): rho = water + Σ c_k w^k, c_k = Σ c_ik ((t-20)/100)^i, c_ik by rows i = 0..4: " + coefficientRows(),
-		fmt.Sprintf("at %.2f °C: water and c_k %s; solved for w = %.6f %%", float64(o.T), list(at.Coefficients()), float64(p)),
+		fmt.Sprintf("at %.2f °C: water and c_k %s; solved for the mass fraction w = %.8f (%.4f %%), at which it gives %.5f kg/m³", float64(o.T), list(at.Coefficients()), float64(p)/100, float64(p), float64(at.Density(p))),
 		fmt.Sprintf("at %.2f °C: water and c_k %s; the same solution has %.5f kg/m³", float64(f.Basis.Sample), list(ref.Coefficients()), float64(ref.Density(p))),
 	}
 }
@@ -55,9 +59,14 @@ func explainSucrose(f Float, o Observation, liquid float64) []string {
 func explainMixture(f Float, o Observation, res Result) []string {
 	at, ref := gravity.MixtureAt(o.T), gravity.MixtureAt(f.Basis.Sample)
 	m := res.Mixture
+	ethanolAt, ethanolRef := gravity.EthanolAt(o.T), gravity.EthanolAt(f.Basis.Sample)
+	sucroseAt, sucroseRef := gravity.SucroseAt(o.T), gravity.SucroseAt(f.Basis.Sample)
 	return []string{
 		fmt.Sprintf("Balling balance: original extract %.4f, apparent extract %.4f, q = 1.22 + 0.001 OE = %.5f, real extract = OE - (OE - AE)/q = %.4f %%", float64(o.OE), float64(res.Extract), gravity.AttenuationQuotient(o.OE), float64(m.Extract)),
 		fmt.Sprintf("alcohol = (OE - RE)/(2.0665 - 0.010665 OE) = %.4f %% mass", float64(m.Alcohol)),
+		fmt.Sprintf("ethanol (OIML R 22) in powers of the mass fraction p, rho = Σ e_k p^k: e_0 to e_11 at %.2f °C %s; at %.2f °C %s", float64(o.T), list(ethanolAt.Coefficients()), float64(f.Basis.Sample), list(ethanolRef.Coefficients())),
+		fmt.Sprintf("sucrose (ICUMSA SPS-4), water and c_k at %.2f °C %s; at %.2f °C %s", float64(o.T), list(sucroseAt.Coefficients()), float64(f.Basis.Sample), list(sucroseRef.Coefficients())),
+		"equal volumes (Tabarié): S = S_a + S_r - 1 over water of the same temperature, with p = A S/S_a in the distillate and w = RE S/S_r in the residue",
 		fmt.Sprintf("mixture (Tabarié, equal volumes; ethanol OIML R 22, sucrose ICUMSA SPS-4): %.5f kg/m³ at %.2f °C, %.5f at %.2f °C", float64(at.Density(m)), float64(o.T), float64(ref.Density(m)), float64(f.Basis.Sample)),
 		fmt.Sprintf("its ratio %.7f brings the liquid to %.2f °C; composition and result are repeated until they agree", float64(ref.Density(m)/at.Density(m)), float64(f.Basis.Sample)),
 	}

@@ -114,20 +114,28 @@ func ferment(f Float, r float64, s Sample) (gravity.Density, gravity.Mixture, er
 	if err != nil {
 		return 0, gravity.Mixture{}, err
 	}
-	at, ref, at20 := gravity.MixtureAt(s.T), gravity.MixtureAt(f.Basis.Sample), gravity.MixtureAt(20)
+	at, ref := gravity.MixtureAt(s.T), gravity.MixtureAt(f.Basis.Sample)
+	at20 := ref
+	if f.Basis.Sample != 20 {
+		at20 = gravity.MixtureAt(20)
+	}
 	factor := gravity.Density(f.factor(s.T))
 	rho := mark / factor
+	to20 := gravity.Density(1)
 	var m gravity.Mixture
 	// The ratio of densities hardly depends on the composition, so each round
 	// gains two digits; 40 is never reached.
 	for range 40 {
-		atRef := ref.Density(m)
-		ae, err := f.apparentExtract(rho, at20.Density(m)/atRef)
+		ae, err := f.apparentExtract(rho, to20)
 		if err != nil {
 			return 0, m, err
 		}
 		m = gravity.Fermented(s.OE, ae)
-		next := mark / factor * ref.Density(m) / at.Density(m)
+		atRef := ref.Density(m)
+		if f.Basis.Sample != 20 {
+			to20 = at20.Density(m) / atRef
+		}
+		next := mark / factor * atRef / at.Density(m)
 		if d := next - rho; d < 1e-9 && d > -1e-9 {
 			return next, m, nil
 		}

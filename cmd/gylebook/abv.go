@@ -1,7 +1,6 @@
 package main
 
 import (
-	"errors"
 	"fmt"
 
 	"github.com/urfave/cli/v2"
@@ -71,23 +70,25 @@ func (b *bench) abv(c *cli.Context) error {
 		}
 		return err
 	})
-	return b.finish(refused, len(done), func() error { return b.print(abvSheet(done)) })
+	return b.finish(refused, len(done), func() error {
+		s, err := b.abvSheet(done)
+		if err != nil {
+			return err
+		}
+		return b.print(s)
+	})
 }
 
 // estimate answers with method m. The rule is applied to the method that it
-// names itself, unless one was asked for.
+// names itself, unless one was asked for. A method without a value (a difference
+// beyond its table, a present gravity above the original) leaves a dash.
 func estimate(p pair, m method.Entry[attenuation.ABVFunc], rule attenuation.Rule, ruleChooses bool) (strength, error) {
 	s := strength{pair: p, rule: rule, all: attenuation.Estimates(p.g)}
 	s.answer = attenuation.EstimateBy(m, p.g)
-	if s.answer.Err != nil && !errors.Is(s.answer.Err, attenuation.ErrOrder) {
-		return s, s.answer.Err
-	}
 	s.spread = attenuation.Spread(s.all)
-	if s.answer.Err == nil {
-		var err error
-		if s.u, err = attenuation.PropagateABV(m.Fn, p.fog.SG, p.fpg.SG, p.fit, p.uOG, p.uPG); err != nil {
-			return s, err
-		}
+	var err error
+	if s.u, err = s.uncertainty(s.answer); err != nil {
+		return s, err
 	}
 	s.by = s.answer
 	if rule.Method != "" && ruleChooses {
@@ -97,46 +98,67 @@ func estimate(p pair, m method.Entry[attenuation.ABVFunc], rule attenuation.Rule
 		}
 		s.by = attenuation.EstimateBy(e, p.g)
 	}
-	if s.by.Err == nil && s.by.Info.Kind == attenuation.KindABV {
-		d := rule.Declare(s.by.Alcohol.ABV)
-		s.declared = &d
-	}
+	s.declared = s.declare(s.by)
 	return s, nil
 }
 
-var abvColumns = []string{"method", "abv_pct_20c", "abw_pct", "real_extract_pct_mass", "in_range", "source"}
-
-func abvSheet(done []strength) sheet {
-	s := sheet{name: "abv", columns: abvColumns}
-	columns := abvColumns
-	if len(done) > 1 {
-		// Several pairs: each record says which one it belongs to.
-		columns = append(append([]string{}, abvColumns...), "original_input", "present_input")
-		s.columns = columns
+// uncertainty is that of one estimate; zero where there is no value.
+func (s strength) uncertainty(e attenuation.Estimate) (attenuation.Propagated, error) {
+	m, err := attenuation.ABVMethods.Find(e.Info.ID)
+	if err != nil || e.Err != nil {
+		return attenuation.Propagated{}, err
 	}
+	return attenuation.PropagateABV(m.Fn, s.fog.SG, s.fpg.SG, s.fit, s.uOG, s.uPG)
+}
+
+// declare applies the rule; nil for what has no value or is potential alcohol.
+func (s strength) declare(e attenuation.Estimate) *gravity.VolPct {
+	if e.Err != nil || e.Info.Kind != attenuation.KindABV {
+		return nil
+	}
+	d := s.rule.Declare(e.Alcohol.ABV)
+	return &d
+}
+
+var abvColumns = []string{
+	"method", "abv_pct_20c", "abw_pct", "real_extract_pct_mass", "in_range", "source",
+}
+
+func (b *bench) abvSheet(done []strength) (sheet, error) {
+	columns := b.lineFields(abvColumns, "expanded_uncertainty_k2", "declared_pct", "original_input", "present_input")
+	s := sheet{name: "abv", columns: columns}
 	for _, one := range done {
 		for _, e := range one.all {
-			values := []any{e.Info.ID, nil, nil, nil, e.InRange, e.Info.Source.String(), one.og.Input, one.pg.Input}
+			values := []any{e.Info.ID, nil, nil, nil, e.InRange, e.Info.Source.String(), nil, number(one.declare(e)), one.og.Input, one.pg.Input}
 			if e.Err == nil {
-				values[1], values[2], values[3] = float64(e.Alcohol.ABV), number(e.Alcohol.ABW), number(e.Alcohol.RE)
+				u, err := one.uncertainty(e)
+				if err != nil {
+					return s, err
+				}
+				values[1], values[2], values[3], values[6] = float64(e.Alcohol.ABV), number(e.Alcohol.ABW), number(e.Alcohol.RE), u.Expanded
 			}
-			s.records = append(s.records, record(columns, values[:len(columns)]))
+			s.records = append(s.records, record(columns, values))
+		}
+		for _, e := range one.all {
+			if e.Err != nil {
+				s.reasons = append(s.reasons, method.Note{Code: method.NoValue, Text: "no value by " + e.Info.ID + ": " + e.Err.Error()})
+			}
 		}
 		s.notes = append(s.notes, one.notesOf()...)
 		s.explain = append(s.explain, one.explain()...)
 	}
 	switch len(done) {
 	case 0:
-		return s
+		return s, nil
 	case 1:
-		one := done[0]
-		s.summary = one.summary()
-		s.ladder, s.tables = one.text()
+		s.summary = done[0].summary()
+		s.ladder, s.tables = done[0].text()
 	default:
+		// A summary is of one pair; of several, each record holds its own.
 		s.tables = []tables.Table{abvTable(done)}
 	}
 	s.notes = append(s.notes, cautionEstimate, cautionRule(done[0].rule.Name, done[0].rule.Dated))
-	return s
+	return s, nil
 }
 
 func (s strength) summary() tables.Record {
@@ -157,11 +179,24 @@ func (s strength) known(x float64) any {
 	return x
 }
 
+// attenuationChecked are the original gravities of the measured brews (USDA
+// Bulletin 493, 1917) that the methods' own doubt comes from.
+var attenuationChecked = struct{ from, to gravity.SG }{1.045, 1.079}
+
 // notesOf are the notes of the answer, of the declared figure and of the readings.
 func (s strength) notesOf() []method.Note {
 	notes := append(append([]method.Note{}, s.notes...), s.answer.Notes...)
 	if s.by.Info.ID != s.answer.Info.ID {
 		notes = append(notes, s.by.Notes...)
+	}
+	if s.g.OG > attenuationChecked.to || s.g.OG < attenuationChecked.from {
+		notes = append(notes, method.Note{Code: method.NotCovered, Text: "the methods were checked on measured brews of OG 1.045 to 1.078; beyond, the spread says more than the ±"})
+	}
+	if s.answer.Info.Kind == attenuation.KindPotential && s.answer.Err == nil {
+		if _, lo, hi, err := attenuation.PotentialAlcohol(s.g.OG); err == nil {
+			notes = append(notes, method.Note{Code: method.NotCovered, Text: fmt.Sprintf(
+				"potential alcohol of the must: %s to %s %% vol at 18 to 17 g sugar per L; rules by Brix differ by 1 %% vol either way", fixed(float64(lo), 2), fixed(float64(hi), 2))})
+		}
 	}
 	if s.declared == nil {
 		reason := s.by.Info.ID + " gives potential alcohol, which is not declared"
@@ -197,7 +232,9 @@ func (s strength) text() (*tables.Ladder, []tables.Table) {
 		{Name: "original", Value: fixed(float64(s.g.OG), 4), Remark: fmt.Sprintf("SG 20/20, read as %s; %s °P", s.og.ReadAs(), fixed(float64(s.g.OE), 2))},
 		{Name: "present", Value: fixed(float64(s.g.FG), 4), Remark: fmt.Sprintf("SG 20/20, read as %s; %s °P apparent", s.pg.ReadAs(), fixed(float64(s.g.AE), 2))},
 		{Name: "alcohol", Value: s.alcohol(), Remark: "% vol by " + s.answer.Info.ID + "; instrument error not included"},
-		{Name: "spread", Value: fixed(float64(s.spread), 2), Remark: "% vol between the methods in range"},
+	}
+	if s.answer.Err == nil {
+		rungs = append(rungs, tables.Rung{Name: "spread", Value: fixed(float64(s.spread), 2), Remark: "% vol between the methods in range"})
 	}
 	if s.declared != nil {
 		rungs = append(rungs, tables.Rung{
@@ -263,6 +300,6 @@ func (s strength) explain() []string {
 		out,
 		fmt.Sprintf("uncertainty: readings, independent (r = 0) u = %.4f; common (r = +1) u = %.4f; method u = %.2f; u = %.4f, U = 2u = %.4f %% vol (JCGM 100)",
 			s.u.Independent, s.u.Common, s.u.Method, s.u.Standard, s.u.Expanded),
-		fmt.Sprintf("declared: %s (%s), %s; applied to %s", s.rule.Text, s.rule.Source, s.rule.Dated, s.by.Info.ID),
+		fmt.Sprintf("declared: %s (%s); applied to %s", s.rule.Text, s.rule.Source, s.by.Info.ID),
 	)
 }

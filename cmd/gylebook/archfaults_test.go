@@ -50,6 +50,10 @@ func TestFenceFaults(t *testing.T) {
 		{"net/http in a formula", "attenuation/selfcheck/rows.go", "net/http", "has no place there"},
 		{"clock in a formula", "attenuation/abv.go", "time", "has no place there"},
 		{"clock in a test of a formula", "attenuation/abv_test.go", "time", ""},
+		{"clock in the journal", "attenuation/journal/entry.go", "time", ""},
+		{"database in the journal's domain", "attenuation/journal/entry.go", "database/sql", "has no place there"},
+		{"database in its store", "attenuation/journal/sqlstore/store.go", "database/sql", ""},
+		{"driver in a command", "cmd/gylebook/main.go", "modernc.org/sqlite", "has no place there"},
 		{"clock in a command", "cmd/gylebook/main.go", "time", ""},
 		{"a package that begins alike", "gravity/water.go", "oslo", ""},
 	} {

@@ -1,6 +1,7 @@
 package main
 
 import (
+	"errors"
 	"fmt"
 
 	"github.com/urfave/cli/v2"
@@ -13,7 +14,7 @@ import (
 
 func (b *bench) attenuationCommand() *cli.Command {
 	return b.command(&cli.Command{
-		Name: "attenuation", Usage: "extracts, apparent and real attenuation, alcohol and energy",
+		Name: "attenuation", Usage: "extracts, apparent and real attenuation, alcohol, energy",
 		ArgsUsage: "OG PG",
 		Description: `Gravities are corrected readings; real extract is Balling's. "-" reads stdin, OG and PG a line.
 			With --limit the distance to the end of a forced fermentation of the same wort, and the carbon dioxide still to come.`,
@@ -30,6 +31,7 @@ type attenuated struct {
 	pair
 	a     attenuation.Attenuation
 	u     attenuation.AttenuationU
+	uABV  attenuation.Propagated
 	limit *gravity.Figures
 }
 
@@ -44,6 +46,11 @@ func (b *bench) attenuation(c *cli.Context) error {
 		if one.u, err = attenuation.PropagateAttenuation(p.fog.SG, p.fpg.SG, p.fit, p.uOG, p.uPG); err != nil {
 			return err
 		}
+		if one.a.ABV > 0 {
+			if one.uABV, err = attenuation.PropagateABV(attenuation.ABVMethods.Default().Fn, p.fog.SG, p.fpg.SG, p.fit, p.uOG, p.uPG); err != nil {
+				return err
+			}
+		}
 		if text := c.String("limit"); text != "" {
 			if one.limit, err = b.limitOf(c, text, one.a.OE); err != nil {
 				return err
@@ -52,7 +59,7 @@ func (b *bench) attenuation(c *cli.Context) error {
 		done = append(done, one)
 		return nil
 	})
-	return b.finish(refused, len(done), func() error { return b.print(attenuationSheet(done)) })
+	return b.finish(refused, len(done), func() error { return b.print(b.attenuationSheet(done)) })
 }
 
 // limitOf reads the apparent extract of a forced fermentation.
@@ -82,25 +89,39 @@ var attenuationColumns = []string{
 	"energy_kcal_per_100ml", "residual_extract_g_per_l", "limit_difference_pct", "notes",
 }
 
+// void says that a present gravity above the original was let pass: there is no
+// attenuation to give.
+func (one attenuated) void() bool { return errors.Is(one.g.Check(), attenuation.ErrOrder) }
+
 // difference is limit minus apparent attenuation, nil without a limit.
 func (one attenuated) difference() *float64 {
-	if one.limit == nil {
+	if one.limit == nil || one.void() {
 		return nil
 	}
 	d := attenuation.LimitDifference(one.a.OE, one.a.AE, one.limit.Extract)
 	return &d
 }
 
-func attenuationSheet(done []attenuated) sheet {
-	s := sheet{name: "attenuation", columns: attenuationColumns}
+func (b *bench) attenuationSheet(done []attenuated) sheet {
+	columns := b.lineFields(attenuationColumns, "original_input", "present_input")
+	s := sheet{name: "attenuation", columns: columns}
 	for _, one := range done {
 		a := one.a
 		values := []any{
 			float64(a.OE), float64(a.AE), float64(a.RE), a.Apparent, a.ApparentPoints, a.Real, a.RDF,
 			float64(a.ABW), float64(a.ABV), a.EnergyKcal100mL, float64(a.ResidualGPL), number(one.difference()), neutral(one.notesOf()),
+			one.og.Input, one.pg.Input,
 		}
-		s.records = append(s.records, record(attenuationColumns, values))
-		s.explain = append(s.explain, attenuation.ExplainAttenuation(one.g, one.a)...)
+		if one.void() {
+			// All but the two extracts as read.
+			for i := 2; i < 12; i++ {
+				values[i] = nil
+			}
+		}
+		s.records = append(s.records, record(columns, values))
+		if !one.void() {
+			s.explain = append(s.explain, attenuation.ExplainAttenuation(one.g, one.a)...)
+		}
 		if one.limit != nil {
 			s.notes = append(s.notes, cautionContainers)
 		}
@@ -135,12 +156,21 @@ func (one attenuated) notesOf() []method.Note {
 
 func (one attenuated) ladder() *tables.Ladder {
 	a, u := one.a, one.u
+	if one.void() {
+		return &tables.Ladder{
+			Answer: []string{"no attenuation: the present gravity is not below the original"},
+			Rungs: []tables.Rung{
+				{Name: "original", Value: fixed(float64(one.g.OG), 4), Remark: "SG 20/20, read as " + one.og.ReadAs()},
+				{Name: "present", Value: fixed(float64(one.g.FG), 4), Remark: "SG 20/20, read as " + one.pg.ReadAs()},
+			},
+		}
+	}
 	pm := func(p attenuation.Propagated, places int) string { return "±" + fixed(p.Expanded, places) }
 	l := &tables.Ladder{
 		Answer: []string{
 			fixed(a.Apparent, 1) + " % apparent " + pm(u.Apparent, 1),
 			fixed(a.Real, 1) + " % real " + pm(u.Real, 1),
-			fixed(float64(a.ABV), 2) + " % vol",
+			fixed(float64(a.ABV), 2) + " % vol " + pm(one.uABV, 2),
 		},
 		Rungs: []tables.Rung{
 			{Name: "original", Value: fixed(float64(one.g.OG), 4), Remark: "SG 20/20, read as " + one.og.ReadAs()},
@@ -157,9 +187,12 @@ func (one attenuated) ladder() *tables.Ladder {
 		},
 	}
 	if d := one.difference(); d != nil {
-		l.Rungs = append(l.Rungs, tables.Rung{Name: "to the limit", Value: asSigned(*d), Remark: "points of % apparent attenuation below the forced fermentation"})
+		l.Rungs = append(l.Rungs, tables.Rung{
+			Name: "to the limit", Value: fixed(*d, 1),
+			Remark: fmt.Sprintf("%% apparent attenuation; %s gravity points above the forced sample", fixed(float64(one.g.FG.Points()-one.limit.SG.Points()), 1)),
+		})
 	}
-	l.Lines = []string{"± is k=2 from the digits typed; instrument error not included"}
+	l.Lines = []string{"± is k=2 from the digits typed, for % vol with the method's own 0.3; instrument error not included"}
 	return l
 }
 
@@ -170,6 +203,10 @@ func attenuationTable(done []attenuated) tables.Table {
 		Foot:    []string{"attenuations on extract; by Balling; instrument error not included"},
 	}
 	for _, one := range done {
+		if one.void() {
+			t.Rows = append(t.Rows, []string{one.og.ReadAs(), one.pg.ReadAs(), fixed(float64(one.a.OE), 2), fixed(float64(one.a.AE), 2), "—", "—", "—", "—", "—"})
+			continue
+		}
 		a := one.a
 		t.Rows = append(t.Rows, []string{
 			one.og.ReadAs(), one.pg.ReadAs(), fixed(float64(a.OE), 2), fixed(float64(a.AE), 2), fixed(float64(a.RE), 2),

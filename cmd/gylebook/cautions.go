@@ -16,7 +16,15 @@ func caution(text string) method.Note { return method.Note{Code: method.Caution,
 // cautionRule says which rule set a declared figure follows.
 func cautionRule(name, dated string) method.Note {
 	if dated == "" {
-		dated = "unknown"
+		dated = "date not stated"
+	} else {
+		dated = "dated " + dated
 	}
-	return caution("rule set " + name + ", dated " + dated + "; check the current official text; the operator remains responsible")
+	return caution("rule set " + name + ", " + dated + "; check the current official text; the operator remains responsible")
 }
+
+var (
+	cautionRestart = caution("fermentation may restart; a new watch period has begun")
+	cautionBroken  = caution("discard liquid that may contain glass or shot")
+	cautionRecords = caution("retention differs by country; follow local rules")
+)

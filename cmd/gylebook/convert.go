@@ -2,6 +2,7 @@ package main
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 
 	"github.com/urfave/cli/v2"
@@ -49,8 +50,21 @@ func converterOf(c *cli.Context) (gravity.Converter, gravity.Pair, error) {
 	default:
 		return conv, gravity.Pair{}, usageError("", "--modulus: read %.20q, wanted 145 or 144.3", m)
 	}
-	pair, err := asread.ParsePair(c.String("basis"))
+	pair, err := basisOf(c)
 	return conv, pair, err
+}
+
+// basisOf reads --basis, a usage error when it cannot be read.
+func basisOf(c *cli.Context) (gravity.Pair, error) {
+	text := c.String("basis")
+	if text == "" {
+		return gravity.Pair2020, nil
+	}
+	pair, err := asread.ParsePair(text)
+	if err != nil {
+		return pair, usageError(hintOf(err), "--basis: %v", err)
+	}
+	return pair, nil
 }
 
 // converted is one value on every scale.
@@ -140,7 +154,9 @@ func scaleList(list string) ([]column, error) {
 	for _, id := range strings.Split(list, ",") {
 		id = strings.TrimSpace(id)
 		if id == "long" {
-			picked = append(picked, columns[len(columns)-1])
+			if long := columns[len(columns)-1]; !slices.ContainsFunc(picked, func(p column) bool { return p.id == long.id }) {
+				picked = append(picked, long)
+			}
 			continue
 		}
 		scale, err := asread.ParseScale(id)
@@ -151,7 +167,7 @@ func scaleList(list string) ([]column, error) {
 			scale = gravity.ScalePlato
 		}
 		for _, col := range columns {
-			if col.id == scale.String() {
+			if col.id == scale.String() && !slices.ContainsFunc(picked, func(p column) bool { return p.id == col.id }) {
 				picked = append(picked, col)
 			}
 		}

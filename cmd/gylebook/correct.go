@@ -6,6 +6,7 @@ import (
 
 	"github.com/urfave/cli/v2"
 
+	"gylebook/attenuation"
 	"gylebook/gravity"
 	"gylebook/gravity/asread"
 	"gylebook/gravity/method"
@@ -22,6 +23,7 @@ func (b *bench) correctCommand() *cli.Command {
 			carry its own temperature. An OG is on the same basis as the reading.`,
 		Flags: []cli.Flag{
 			&cli.StringFlag{Name: "temp", Usage: "`T` temperature of the sample: 28C, 68F"},
+			&cli.StringFlag{Name: "instrument", Usage: "`ID` of an instrument of the journal, as it is now"},
 			&cli.StringFlag{Name: "basis", Value: "20/20", Usage: "`PAIR` reference of the instrument: 20/20, 60/60F, 15/15, 17.5/17.5, 15/4, 20/4"},
 			&cli.StringFlag{Name: "body", Usage: "`MATERIAL` of the instrument: glass, borosilicate, polycarbonate"},
 			&cli.StringFlag{Name: "meniscus", Value: "bottom", Usage: "`PLACE` where it was read: bottom or top (the scale is meant for the bottom)"},
@@ -31,6 +33,7 @@ func (b *bench) correctCommand() *cli.Command {
 	}, `gylebook correct 1.050 --temp 28C
 		gylebook correct 1.012 --temp 30C --og 1.048
 		gylebook correct 12.1P --temp 68F --json
+		gylebook correct 1.050 --temp 22C --instrument H1
 		printf '1.050 28C\n1.048 25C\n' | gylebook correct -`, b.correct)
 }
 
@@ -40,7 +43,9 @@ type reader struct {
 	body     tempcorr.Body
 	meniscus tempcorr.Meniscus
 	oe       gravity.Plato
+	og       string // the original gravity as it was read
 	method   string
+	named    *named // nil when no instrument is named
 }
 
 // corrected is one reading, typed and corrected.
@@ -61,17 +66,19 @@ func (b *bench) correct(c *cli.Context) error {
 		return err
 	}
 	var done []corrected
-	refused := b.each(c, false, func(fields []string) error {
-		temp := c.String("temp")
-		if len(fields) == 2 && temp == "" {
+	temp := c.String("temp")
+	// "1.050 28C" on the line is one reading with its temperature.
+	refused := b.each(c, temp == "" && len(asread.Join(c.Args().Slice())) == 2, func(fields []string) error {
+		temp := temp
+		if len(fields) == 2 {
 			temp = fields[1]
 			fields = fields[:1]
 		}
 		if len(fields) != 1 {
-			return dataError("one reading a line, with its temperature if --temp is not given", "read %d values, wanted one reading", len(fields))
+			return dataError("one reading a line, its temperature behind it", "read %d values, wanted a reading and its temperature", len(fields))
 		}
 		if temp == "" {
-			return usageError("add --temp 20C", "the sample temperature is missing; usage: gylebook correct READING… --temp T")
+			return usageError("read the sample's thermometer and add it, like --temp 28C", "the sample temperature is missing; usage: gylebook correct READING… --temp T")
 		}
 		one, err := b.correctOne(r, fields[0], temp)
 		if err == nil {
@@ -105,13 +112,16 @@ func (b *bench) readerOf(c *cli.Context) (reader, error) {
 		return r, usageError("", "--meniscus: read %.20q, wanted bottom or top", string(r.meniscus))
 	}
 	var err error
-	if r.basis, err = asread.ParsePair(c.String("basis")); err != nil {
+	if r.basis, err = basisOf(c); err != nil {
 		return r, err
 	}
 	if r.body, err = tempcorr.FindBody(c.String("body")); err != nil {
 		return r, err
 	}
 	if _, err = tempcorr.Methods.Find(r.method); err != nil {
+		return r, err
+	}
+	if err := b.nameInstrument(c, &r); err != nil {
 		return r, err
 	}
 	if text := c.String("og"); text != "" {
@@ -126,7 +136,7 @@ func (b *bench) readerOf(c *cli.Context) (reader, error) {
 		if f.Extract <= 0 {
 			return r, dataError("leave --og out for a liquid without extract", "read OG %s, wanted an original gravity above water", og.ReadAs())
 		}
-		r.oe = f.Extract
+		r.oe, r.og = f.Extract, og.ReadAs()
 	}
 	if r.method == "fermenting" && r.oe == 0 {
 		return r, usageError("add --og 1.048", "--method fermenting needs the original gravity")
@@ -143,7 +153,9 @@ func (b *bench) correctOne(r reader, reading, temp string) (corrected, error) {
 	if one.temp, err = b.temperature(temp); err != nil {
 		return one, err
 	}
-	one.by = tempcorr.New(one.typed.Scale, r.basis, r.body)
+	if one.by, err = r.hydrometer(one.typed.ReadAs(), one.typed.Scale); err != nil {
+		return one, err
+	}
 	one.seen = tempcorr.Observation{
 		Reading: one.typed.Value, Step: one.typed.Step, T: one.temp.C,
 		ReadAt: r.meniscus, OE: r.oe, Method: r.method,
@@ -162,17 +174,20 @@ func (one corrected) record() tables.Record {
 	res := one.res
 	values := []any{
 		one.typed.Input, res.Reading, one.typed.ReadAs(), one.typed.Scale.String(), float64(one.temp.C),
-		float64(one.by.Basis.Sample), res.Method.ID, nil,
+		float64(one.by.Basis.Sample), res.Method.ID, one.by.ID,
 		res.Meniscus, res.Instrument(), res.Temperature, res.Corrected, float64(res.SG),
 		float64(res.Extract), res.Budget.Expanded, neutral(res.Notes),
 	}
 	return record(correctColumns, values)
 }
 
-// record pairs names with values.
+// record pairs names with values; what is not known is null, an empty text too.
 func record(names []string, values []any) tables.Record {
 	r := make(tables.Record, len(names))
-	for i, n := range names {
+	for i, n := range names { // values beyond the names are left out
+		if values[i] == "" {
+			values[i] = nil
+		}
 		r[i] = tables.Field{Name: n, Value: values[i]}
 	}
 	return r
@@ -180,10 +195,15 @@ func record(names []string, values []any) tables.Record {
 
 func (b *bench) correctSheet(r reader, done []corrected) sheet {
 	s := sheet{name: "correct", columns: correctColumns}
+	if r.named != nil {
+		s.notes = append(s.notes, r.named.notes...)
+	}
 	hot := false
 	for _, one := range done {
 		s.records = append(s.records, one.record())
-		s.explain = append(s.explain, tempcorr.Explain(one.by, one.seen, one.res)...)
+		if b.set.explain {
+			s.explain = append(s.explain, tempcorr.Explain(one.by, one.seen, one.res)...)
+		}
 		hot = hot || one.temp.C > 40
 	}
 	if hot {
@@ -216,7 +236,7 @@ func (one corrected) ladder(r reader) *tables.Ladder {
 	}
 	answer := []string{
 		fixed(res.Corrected, p) + " " + unit,
-		"±" + fixed(res.Budget.Expanded, p) + " (k=2, instrument error not included)",
+		"±" + fixed(res.Budget.Expanded, p) + " (k=2, " + covers(res.Budget.Record) + ")",
 	}
 	if one.typed.Scale == gravity.ScaleSG && r.basis != gravity.Pair2020 {
 		answer = append(answer, fixed(float64(res.SG), p)+" SG 20/20")
@@ -230,12 +250,15 @@ func (one corrected) ladder(r reader) *tables.Ladder {
 		Name: "read", Value: one.typed.Typed.String(),
 		Remark: fmt.Sprintf("%s at %s, %s %s, %s of meniscus", one.typed.ReadAs(), one.temp.ReadAs(), r.body.ID, r.basis, r.meniscus),
 	}}
+	if r.og != "" {
+		rungs = append(rungs, tables.Rung{Name: "original", Value: fixed(float64(r.oe), 2), Remark: "°P, read as " + r.og})
+	}
 	if res.Meniscus != 0 {
 		rungs = append(rungs, tables.Rung{Name: "meniscus", Value: asread.Signed(res.Meniscus, p), Remark: "read at the " + string(r.meniscus)})
 	}
 	rungs = append(
 		rungs,
-		tables.Rung{Name: "certificate", Value: asread.Signed(res.Instrument(), p), Remark: "no instrument named"},
+		tables.Rung{Name: "certificate", Value: asread.Signed(res.Instrument(), p), Remark: r.certificateRemark()},
 		tables.Rung{Name: "temperature", Value: asread.Signed(res.Temperature, p), Remark: liquidRemark(r, res)},
 		tables.Rung{Name: "corrected", Value: fixed(res.Corrected, p), Remark: apparent(res)},
 	)
@@ -247,7 +270,10 @@ func liquidRemark(r reader, res tempcorr.Result) string {
 	body := fmt.Sprintf("%s %.0fe-6/K", r.body.ID, r.body.Expansion*1e6)
 	switch res.Method.ID {
 	case "fermenting":
-		return fmt.Sprintf("fermenting model from %s °P (Balling, OIML R 22, ICUMSA SPS-4), %s", fixed(float64(r.oe), 2), body)
+		if res.Mixture.Alcohol == 0 {
+			return "not below the original: no alcohol, sucrose model, " + body
+		}
+		return "fermenting model (Balling, OIML R 22, ICUMSA SPS-4), " + body
 	case "lyons1992":
 		return "temperature-only cubic (Lyons 1992), no glass"
 	}
@@ -256,7 +282,7 @@ func liquidRemark(r reader, res tempcorr.Result) string {
 
 func apparent(res tempcorr.Result) string {
 	if res.Mixture.Alcohol > 0 {
-		return fmt.Sprintf("apparent extract; about %s %% mass alcohol in it", fixed(float64(res.Mixture.Alcohol), 1))
+		return fmt.Sprintf("apparent; about %s %% vol alcohol in it", fixed(float64(attenuation.VolumeOf(res.Mixture.Alcohol, res.SG)), 1))
 	}
 	return ""
 }
@@ -272,7 +298,7 @@ func correctTable(r reader, done []corrected) tables.Table {
 			{Head: "SG 20/20", Align: tables.Right},
 			{Head: "°P", Align: tables.Right},
 		},
-		Foot: []string{fmt.Sprintf("%s %s, %s of meniscus; instrument error not included", r.body.ID, r.basis, r.meniscus)},
+		Foot: []string{fmt.Sprintf("%s %s, %s of meniscus; %s", r.body.ID, r.basis, r.meniscus, covers(done[0].res.Budget.Record))},
 	}
 	for _, one := range done {
 		p := one.places()

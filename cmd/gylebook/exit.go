@@ -9,6 +9,7 @@ import (
 	"syscall"
 
 	"gylebook/gravity/method"
+	"gylebook/tables"
 )
 
 // Exit codes, after sysexits.h.
@@ -17,6 +18,7 @@ const (
 	exitFailed      = 1
 	exitUsage       = 64
 	exitData        = 65
+	exitNoInput     = 66
 	exitCannotWrite = 73
 	exitInterrupted = 130
 )
@@ -67,6 +69,8 @@ func failure(w io.Writer, err error) int {
 		return e.code
 	case errors.As(err, &unknown):
 		return exitUsage
+	case journalCode(err) != 0:
+		return journalCode(err)
 	case errors.As(err, &path):
 		return exitCannotWrite
 	}
@@ -78,9 +82,9 @@ func say(w io.Writer, prefix string, err error) {
 	if prefix != "" {
 		prefix += ": "
 	}
-	fmt.Fprintf(w, "gylebook: %s%s\n", prefix, err)
+	fmt.Fprintf(w, "gylebook: %s%s\n", prefix, tables.Clean(err.Error()))
 	if hint := hintOf(err); hint != "" {
-		fmt.Fprintf(w, "hint: %s\n", hint)
+		fmt.Fprintf(w, "hint: %s\n", tables.Clean(hint))
 	}
 }
 

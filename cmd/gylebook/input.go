@@ -10,7 +10,9 @@ import (
 
 	"github.com/urfave/cli/v2"
 
+	"gylebook/gravity"
 	"gylebook/gravity/asread"
+	"gylebook/gravity/method"
 )
 
 // maxLine is the longest line that stdin may hold.
@@ -21,7 +23,7 @@ const maxLine = 1 << 16
 // stdin, one set a line: a refused line is named and the others go on.
 func (b *bench) each(c *cli.Context, grouped bool, do func(fields []string) error) error {
 	args := asread.Join(c.Args().Slice())
-	if len(args) == 1 && args[0] == "-" {
+	if b.lines = len(args) == 1 && args[0] == "-"; b.lines {
 		return b.eachLine(do)
 	}
 	if grouped {
@@ -57,7 +59,7 @@ func (b *bench) eachLine(do func(fields []string) error) error {
 		if n == 1 {
 			text = strings.TrimPrefix(text, "\ufeff")
 		}
-		if strings.TrimSpace(text) == "" {
+		if text = strings.TrimSpace(text); text == "" || text[0] == '#' {
 			continue
 		}
 		seen = true
@@ -90,7 +92,13 @@ func readLine(in *bufio.Reader) ([]byte, error) {
 
 // reading parses one gravity; on a terminal a doubtful one is asked about.
 func (b *bench) reading(text string) (asread.Reading, error) {
-	return ask(b, text, func(s string) (asread.Reading, error) { return asread.ParseReading(s, b.set.scale) })
+	r, err := ask(b, text, func(s string) (asread.Reading, error) { return asread.ParseReading(s, b.set.scale) })
+	// A whole number in the range of worts in °P is taken for points; say so.
+	if x := r.Typed.Float(); err == nil && r.Scale == gravity.ScaleSG && x >= 2 && x <= 30 {
+		b.notes = append(b.notes, method.Note{Code: method.Interpreted, Text: fmt.Sprintf(
+			"%s is read as points, %s; for degrees Plato type %sP", r.Typed, r.ReadAs(), r.Typed)})
+	}
+	return r, err
 }
 
 // temperature parses one temperature; on a terminal a doubtful one is asked about.

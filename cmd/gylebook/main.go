@@ -13,5 +13,7 @@ func main() {
 	signal.Ignore(syscall.SIGPIPE)
 	ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt)
 	defer stop()
+	// A read that waits for input does not see ctx: the interrupt ends the program.
+	context.AfterFunc(ctx, func() { os.Exit(exitInterrupted) })
 	os.Exit(run(ctx, os.Args[1:], os.Stdin, os.Stdout, os.Stderr))
 }

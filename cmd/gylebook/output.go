@@ -2,6 +2,8 @@ package main
 
 import (
 	"io"
+	"maps"
+	"slices"
 	"time"
 
 	"gylebook/gravity/asread"
@@ -16,6 +18,7 @@ type sheet struct {
 	records []tables.Record
 	summary tables.Record
 	notes   []method.Note // of the whole run, and cautions
+	reasons []method.Note // why a value is null; a person sees the dash
 	ladder  *tables.Ladder
 	more    []*tables.Ladder // further blocks like the first
 	tables  []tables.Table
@@ -29,7 +32,7 @@ func (b *bench) print(s sheet) error {
 	case tables.JSON, tables.CSV:
 		d := tables.Document{
 			Schema: "gylebook." + s.name + "/1", GeneratedAt: b.set.now.UTC().Format(time.RFC3339),
-			Columns: s.columns, Records: s.records, Summary: s.summary, Notes: neutral(s.notes),
+			Columns: s.columns, Records: s.records, Summary: s.summary, Notes: neutral(slices.Concat(b.notes, s.reasons, s.notes)),
 		}
 		if b.set.format == tables.JSON {
 			if b.set.explain {
@@ -89,6 +92,13 @@ func (b *bench) printText(s sheet) error {
 			return err
 		}
 	}
+	// Without a ladder to stand under, the steps stand by themselves.
+	if s.ladder == nil && b.set.explain && len(s.explain) > 0 {
+		if err := gap(); err != nil {
+			return err
+		}
+		return b.write(tables.Ladder{Answer: []string{"steps"}, Lines: s.explain})
+	}
 	return nil
 }
 
@@ -112,17 +122,22 @@ func (b *bench) write(w writer) error {
 // printNotes puts every note on stderr once: those of the records, then those of
 // the run, cautions last.
 func (b *bench) printNotes(s sheet) {
-	seen := map[string]bool{}
+	seen, ofCode := map[string]bool{}, map[string]int{}
 	show := func(n tables.Note) {
 		if seen[n.Text] {
 			return
 		}
 		seen[n.Text] = true
+		// Many of one kind, from many values: a few stand for all.
+		ofCode[n.Code]++
+		if ofCode[n.Code] > maxOfCode && n.Code != method.Caution {
+			return
+		}
 		kind := "note"
 		if n.Code == method.Caution {
 			kind = "caution"
 		}
-		for i, line := range tables.Wrap(kind+": "+n.Text, max(b.set.width-2, 40)) {
+		for i, line := range tables.Wrap(kind+": "+tables.Clean(n.Text), max(b.set.width-2, 40)) {
 			if i > 0 {
 				line = "  " + line
 			}
@@ -136,10 +151,18 @@ func (b *bench) printNotes(s sheet) {
 			}
 		}
 	}
-	for _, n := range neutral(s.notes) {
+	for _, n := range neutral(slices.Concat(b.notes, s.notes)) {
 		show(n)
 	}
+	for _, code := range slices.Sorted(maps.Keys(ofCode)) {
+		if more := ofCode[code] - maxOfCode; more > 0 && code != method.Caution {
+			b.note("note: %d more like it (%s); --json or --csv shows each", more, code)
+		}
+	}
 }
+
+// maxOfCode is how many notes of one kind are shown.
+const maxOfCode = 4
 
 // neutral turns the notes of the packages below into those of package tables.
 func neutral(notes []method.Note) []tables.Note {
@@ -152,6 +175,15 @@ func neutral(notes []method.Note) []tables.Note {
 
 // fixed prints x for people: half to even, no -0.00.
 func fixed(x float64, places int) string { return asread.Fixed(x, places, asread.HalfEven) }
+
+// lineFields are what a record ends with when its values came as a line of stdin:
+// without them it could not be told which line it belongs to.
+func (b *bench) lineFields(names []string, extra ...string) []string {
+	if !b.lines {
+		return names
+	}
+	return append(slices.Clone(names), extra...)
+}
 
 // number is a pointer for a field that may be unknown.
 func number[F ~float64](p *F) any {

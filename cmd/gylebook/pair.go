@@ -68,9 +68,9 @@ func (b *bench) pairOf(conv gravity.Converter, basis gravity.Pair, fields []stri
 	p.g = attenuation.Of(p.fog, p.fpg)
 	switch err = p.g.Check(); {
 	case err == nil:
-	case errors.Is(err, attenuation.ErrOrder) && reason != "":
-		p.notes = append(p.notes, method.Note{Code: method.WithReason, Text: "present gravity is not below the original; accepted with the reason: " + reason})
-	case errors.Is(err, attenuation.ErrOrder):
+	case (errors.Is(err, attenuation.ErrOrder) || errors.Is(err, attenuation.ErrTooLow)) && reason != "":
+		p.notes = append(p.notes, method.Note{Code: method.WithReason, Text: err.Error() + "; accepted with the reason: " + reason})
+	case errors.Is(err, attenuation.ErrOrder), errors.Is(err, attenuation.ErrTooLow):
 		return p, dataError(hintOf(err)+" to keep it add --reason TEXT", "%v", err)
 	default:
 		return p, err
@@ -94,13 +94,22 @@ func readingU(r asread.Reading, convert func(v float64) (gravity.Figures, error)
 	return attenuation.Resolution(float64(hi.SG-lo.SG) / 2)
 }
 
+// flagNumber reads the number of a flag; the error names the flag.
+func flagNumber(name, text string) (asread.Value, error) {
+	v, err := asread.ParseNumber(text)
+	if err != nil {
+		return v, dataError(hintOf(err), "--%s: %v", name, err)
+	}
+	return v, nil
+}
+
 // setReadingU replaces both by a half-width typed, in SG.
 func (p *pair) setReadingU(c *cli.Context) error {
 	text := c.String("reading-u")
 	if text == "" {
 		return nil
 	}
-	v, err := asread.ParseNumber(text)
+	v, err := flagNumber("reading-u", text)
 	if err != nil {
 		return err
 	}

@@ -1,6 +1,10 @@
 package main
 
 import (
+	"errors"
+	"fmt"
+	"strconv"
+
 	"github.com/urfave/cli/v2"
 
 	"gylebook/attenuation"
@@ -28,30 +32,73 @@ func (b *bench) refractometerCommand() *cli.Command {
 
 var refractometerColumns = []string{"method", "sg_20_20", "abv_pct_20c", "in_range", "source"}
 
+// refracted is one pair of Brix readings with every relation's present gravity.
+type refracted struct {
+	typed [2]asread.Reading
+	brix  [2]gravity.Plato // at 20 °C, divided by the factor
+	all   []attenuation.RefractometerEstimate
+}
+
 func (b *bench) refractometer(c *cli.Context) error {
-	args := asread.Join(c.Args().Slice())
-	if len(args) != 2 {
-		return missing(c.Command, "the original or the present Brix")
+	if c.Args().Len() == 0 {
+		return missing(c.Command, "the original and the present Brix")
 	}
-	factor, err := asread.ParseNumber(c.String("factor"))
+	factor, err := flagNumber("factor", c.String("factor"))
 	if err != nil {
 		return err
 	}
 	if factor.Float() < 0.9 || factor.Float() > 1.2 {
 		return dataError("type 1.04, or the mean of your own worts", "--factor: read %s, wanted 0.9 to 1.2", factor)
 	}
-	s := sheet{name: "refractometer", columns: refractometerColumns}
+	s := sheet{name: "refractometer"}
 	if factor.Float() < attenuation.WortCorrectionMin || factor.Float() > attenuation.WortCorrectionMax {
 		s.notes = append(s.notes, method.Note{Code: method.OutOfRange, Text: "a wort correction factor is usually 1.02 to 1.06 (common practice)"})
 	}
-	var brix [2]gravity.Plato
-	var typed [2]asread.Reading
-	for i, text := range args {
-		if typed[i], brix[i], err = b.brix(c, text, &s); err != nil {
-			return err
+	var done []refracted
+	refused := b.each(c, true, func(fields []string) error {
+		if len(fields) != 2 {
+			return usageError("", "wanted two values, read %d; usage: gylebook %s %s", len(fields), c.Command.Name, c.Command.ArgsUsage)
 		}
-		brix[i] /= gravity.Plato(factor.Float())
+		one, err := b.refract(c, fields, factor, &s)
+		if err == nil {
+			done = append(done, one)
+		}
+		return err
+	})
+	return b.finish(refused, len(done), func() error {
+		s.columns = b.lineFields(refractometerColumns, "original_input", "present_input")
+		refractometerSheet(&s, done, factor)
+		return b.print(s)
+	})
+}
+
+// refract reads and estimates one pair.
+func (b *bench) refract(c *cli.Context, fields []string, factor asread.Value, s *sheet) (refracted, error) {
+	var one refracted
+	var err error
+	for i, text := range fields {
+		if one.typed[i], one.brix[i], err = b.brix(c, text, s); err != nil {
+			return one, err
+		}
+		at20 := float64(one.brix[i])
+		one.brix[i] /= gravity.Plato(factor.Float())
+		s.explain = append(s.explain, fmt.Sprintf("%s: %.4f °Bx at 20 °C / %s = %.4f", [2]string{"original", "present"}[i], at20, factor, float64(one.brix[i])))
 	}
+	one.all = attenuation.RefractometerEstimates(one.brix[0], one.brix[1])
+	for _, e := range one.all {
+		if errors.Is(e.Err, attenuation.ErrOrder) {
+			return one, dataError(hintOf(e.Err), "present reading %s is not below the original %s", one.typed[1].ReadAs(), one.typed[0].ReadAs())
+		}
+		if e.Err != nil {
+			return one, e.Err
+		}
+	}
+	s.explain = append(s.explain, attenuation.ExplainRefractometer(one.brix[0], one.brix[1], one.all)...)
+	return one, nil
+}
+
+// refractometerSheet fills the sheet: one record a relation and pair.
+func refractometerSheet(s *sheet, done []refracted, factor asread.Value) {
 	t := tables.Table{Columns: []tables.Column{
 		{Head: "relation", Align: tables.Left},
 		{Head: "SG 20/20", Align: tables.Right},
@@ -59,41 +106,56 @@ func (b *bench) refractometer(c *cli.Context) error {
 		{Head: "% vol", Align: tables.Right},
 		{Head: "in range", Align: tables.Left},
 	}}
-	var first *attenuation.RefractometerEstimate
-	for _, e := range attenuation.RefractometerEstimates(brix[0], brix[1]) {
-		if e.Err != nil {
-			return e.Err
-		}
-		if first == nil {
-			first = &e
-		}
-		abv, row := refractometerRow(brix[0], e)
-		s.records = append(s.records, record(refractometerColumns, []any{e.Info.ID, float64(e.SG), abv, e.InRange, e.Info.Source.String()}))
-		t.Rows = append(t.Rows, row)
-		for _, n := range e.Notes {
-			if n.Code != method.Caution {
-				s.notes = append(s.notes, n)
+	if len(done) > 1 {
+		t.Columns = append([]tables.Column{{Head: "original"}, {Head: "present"}}, t.Columns...)
+	}
+	for _, one := range done {
+		for _, e := range one.all {
+			abv, row := refractometerRow(one.brix[0], e)
+			s.records = append(s.records, record(s.columns, []any{
+				e.Info.ID, float64(e.SG), abv, e.InRange, e.Info.Source.String(), one.typed[0].Input, one.typed[1].Input,
+			}))
+			if len(done) > 1 {
+				row = append([]string{one.typed[0].ReadAs(), one.typed[1].ReadAs()}, row...)
+			}
+			t.Rows = append(t.Rows, row)
+			for _, n := range e.Notes {
+				if n.Code != method.Caution {
+					s.notes = append(s.notes, n)
+				}
 			}
 		}
 	}
-	s.ladder = &tables.Ladder{
-		Answer: []string{fixed(float64(first.SG), 4) + " SG 20/20", "by " + first.Info.ID, "no hydrometer value"},
-		Rungs: []tables.Rung{
-			{Name: "original", Value: typed[0].Typed.String(), Remark: typed[0].ReadAs() + ", wort extract " + fixed(float64(brix[0]), 2) + " °P"},
-			{Name: "present", Value: typed[1].Typed.String(), Remark: typed[1].ReadAs() + ", " + fixed(float64(brix[1]), 2) + " after the factor"},
-			{Name: "factor", Value: factor.String(), Remark: "wort correction factor"},
-		},
-	}
 	s.tables = []tables.Table{t}
 	s.notes = append(s.notes, cautionRefractometer)
-	return b.print(s)
+	if len(done) == 1 {
+		s.ladder = done[0].ladder(factor)
+	}
+}
+
+func (one refracted) ladder(factor asread.Value) *tables.Ladder {
+	lo, hi := one.all[0].SG, one.all[0].SG
+	for _, e := range one.all {
+		lo, hi = min(lo, e.SG), max(hi, e.SG)
+	}
+	return &tables.Ladder{
+		Answer: []string{
+			fixed(float64(one.all[0].SG), 4) + " SG 20/20",
+			fixed(float64(lo), 4) + " to " + fixed(float64(hi), 4) + " by " + strconv.Itoa(len(one.all)) + " relations",
+		},
+		Rungs: []tables.Rung{
+			{Name: "original", Value: one.typed[0].Typed.String(), Remark: one.typed[0].ReadAs() + ", wort extract " + fixed(float64(one.brix[0]), 2) + " °P"},
+			{Name: "present", Value: one.typed[1].Typed.String(), Remark: one.typed[1].ReadAs() + ", " + fixed(float64(one.brix[1]), 2) + " after the factor"},
+			{Name: "factor", Value: factor.String(), Remark: "wort correction factor; for juice and must measure your own"},
+		},
+	}
 }
 
 // brix reads one refractometer reading and corrects its temperature.
 func (b *bench) brix(c *cli.Context, text string, s *sheet) (asread.Reading, gravity.Plato, error) {
 	r, err := ask(b, text, func(t string) (asread.Reading, error) { return asread.ParseReading(t, gravity.ScaleBrix) })
 	if err != nil {
-		return r, 0, err
+		return r, 0, dataError("type degrees Brix, such as 12.1", "read %.40q, wanted degrees Brix", text)
 	}
 	if !r.Scale.IsMass() {
 		return r, 0, dataError("type 12.1 or 12.1Bx", "read %s, wanted degrees Brix", r.ReadAs())
@@ -104,10 +166,11 @@ func (b *bench) brix(c *cli.Context, text string, s *sheet) (asread.Reading, gra
 		if err != nil {
 			return r, 0, err
 		}
-		d, _, notes, err := tempcorr.RefractometerCorrection(v, t.C)
+		d, table, notes, err := tempcorr.RefractometerCorrection(v, t.C)
 		if err != nil {
 			return r, 0, err
 		}
+		s.explain = append(s.explain, fmt.Sprintf("%s: at %s add %+.4f (%s: %s)", r.ReadAs(), t.ReadAs(), float64(d), table.ID, table.Source))
 		v += d
 		s.notes = append(s.notes, notes...)
 	}

@@ -5,10 +5,13 @@ import (
 	"fmt"
 	"io"
 	"os"
+	"slices"
 	"strings"
 
 	"github.com/urfave/cli/v2"
 	"golang.org/x/term"
+
+	"gylebook/gravity/method"
 )
 
 // bench is one run of the program: its streams, its settings and the errors that
@@ -17,20 +20,50 @@ type bench struct {
 	in       io.Reader
 	out, err io.Writer
 	set      settings
+	notes    []method.Note // on how values were read
+	lines    bool          // values came line by line, from stdin
+	help     []func()      // each writes one command's help; only when asked for
 }
 
 // run is the whole program. It returns the exit code.
 func run(ctx context.Context, args []string, in io.Reader, out, errOut io.Writer) int {
 	b := &bench{in: in, out: out, err: errOut}
 	app := b.app()
+	help := &keeper{w: out}
+	app.Writer = help
 	line, err := arrange(args, app.Commands)
+	if slices.ContainsFunc(line, asksHelp) {
+		for _, write := range b.help {
+			write()
+		}
+	}
 	if err == nil {
 		err = app.RunContext(ctx, append([]string{app.Name}, line...))
+	}
+	if err == nil {
+		err = help.err
 	}
 	if err == nil {
 		err = ctx.Err()
 	}
 	return failure(errOut, err)
+}
+
+func asksHelp(arg string) bool { return arg == "--help" || arg == "-help" || arg == "-h" }
+
+// keeper keeps the first error of a writer. The parser in use prints help and
+// version through it and drops the error itself.
+type keeper struct {
+	w   io.Writer
+	err error
+}
+
+func (k *keeper) Write(p []byte) (int, error) {
+	n, err := k.w.Write(p)
+	if k.err == nil {
+		k.err = err
+	}
+	return n, err
 }
 
 func (b *bench) app() *cli.App {
@@ -48,6 +81,9 @@ func (b *bench) app() *cli.App {
 		Commands: []*cli.Command{
 			b.correctCommand(), b.convertCommand(), b.abvCommand(), b.attenuationCommand(),
 			b.refractometerCommand(), b.tableCommand(), b.sourcesCommand(), b.selfcheckCommand(),
+			b.instrumentCommand(), b.batchCommand(), b.logCommand(), b.undoCommand(), b.voidCommand(), b.eventCommand(),
+			b.exportCommand(), b.importCommand(), b.journalCommand(),
+			b.roundsCommand(), b.todayCommand(), b.seasonCommand(), b.completionCommand(), b.completeOpenCommand(),
 		},
 	}
 	app.Action = func(c *cli.Context) error {
@@ -63,7 +99,7 @@ func (b *bench) app() *cli.App {
 func (b *bench) command(cmd *cli.Command, examples string, action func(*cli.Context) error) *cli.Command {
 	own := cmd.Flags
 	cmd.Flags = append(append([]cli.Flag{}, own...), globalFlags()...)
-	cmd.CustomHelpTemplate = commandHelp(cmd, own, examples)
+	b.help = append(b.help, func() { cmd.CustomHelpTemplate = commandHelp(cmd, own, examples) })
 	cmd.OnUsageError = onUsage
 	cmd.HideHelpCommand = true
 	cmd.Action = func(c *cli.Context) error {
@@ -89,9 +125,11 @@ func onUsage(c *cli.Context, err error, _ bool) error {
 }
 
 func unknownCommand(name string, commands []*cli.Command) error {
-	names := make([]string, len(commands))
-	for i, c := range commands {
-		names[i] = c.Name
+	var names []string
+	for _, c := range commands {
+		if !c.Hidden {
+			names = append(names, c.Name)
+		}
 	}
 	return usageError("gylebook --help shows an example of each",
 		"unknown command %.40q, known: %s", name, strings.Join(names, ", "))
@@ -101,6 +139,11 @@ func unknownCommand(name string, commands []*cli.Command) error {
 func (b *bench) interactive() bool {
 	f, ok := b.in.(*os.File)
 	return ok && !b.set.noInput && term.IsTerminal(int(f.Fd()))
+}
+
+// tooMany says that more values were given than the command takes.
+func tooMany(c *cli.Context, want int) error {
+	return usageError("", "read %d values, wanted %d; usage: gylebook %s %s", c.Args().Len(), want, c.Command.Name, c.Command.ArgsUsage)
 }
 
 // missing is the one-line usage hint for values that are not there.

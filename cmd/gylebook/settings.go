@@ -24,6 +24,9 @@ type settings struct {
 	scale   gravity.Scale
 	now     time.Time
 	width   int
+
+	operator string // "" when not named
+	journal  string // place; "" is the data folder
 }
 
 // globalFlags are offered by every command.
@@ -38,6 +41,8 @@ func globalFlags() []cli.Flag {
 		&cli.BoolFlag{Name: "no-input", Usage: "never ask, refuse instead"},
 		&cli.StringFlag{Name: "units", Usage: "`UNIT` C or F, the unit of a bare temperature", EnvVars: []string{"GYLEBOOK_UNITS"}},
 		&cli.StringFlag{Name: "scale", Usage: "`ID` scale of a bare gravity: sg, plato, brix, points, oechsle, kmw, baume, twaddell, density, gpl", EnvVars: []string{"GYLEBOOK_SCALE"}},
+		&cli.StringFlag{Name: "operator", Usage: "`NAME` who reads; the login name unless given", EnvVars: []string{"GYLEBOOK_OPERATOR"}},
+		&cli.StringFlag{Name: "journal", Usage: "`PLACE` file of the journal; in the data folder unless given", EnvVars: []string{"GYLEBOOK_JOURNAL"}},
 	}
 }
 
@@ -46,6 +51,7 @@ func readSettings(c *cli.Context, out any) (settings, error) {
 	s := settings{
 		explain: c.Bool("explain"), quiet: c.Bool("quiet"), plain: c.Bool("plain"),
 		noInput: c.Bool("no-input"), units: asread.C, now: time.Now(), width: terminalWidth(out),
+		operator: c.String("operator"), journal: c.String("journal"),
 	}
 	var err error
 	if s.format, err = tables.ParseFormat(c.String("format")); err != nil {
@@ -53,6 +59,9 @@ func readSettings(c *cli.Context, out any) (settings, error) {
 	}
 	if c.Bool("json") && c.Bool("csv") {
 		return s, usageError("", "--json and --csv exclude each other")
+	}
+	if form := c.String("format"); c.IsSet("format") && (c.Bool("json") && form != "json" || c.Bool("csv") && form != "csv") {
+		return s, usageError("", "--format %s and --json or --csv exclude each other", form)
 	}
 	if c.Bool("json") {
 		s.format = tables.JSON

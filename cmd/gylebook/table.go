@@ -9,6 +9,9 @@ import (
 	"gylebook/gravity/method"
 )
 
+// firstRow heads the steps of a chart: those of its first value stand for all.
+const firstRow = "the first value of the chart, step by step"
+
 // maxRows bounds a chart: it is meant for a wall.
 const maxRows = 2000
 
@@ -23,20 +26,24 @@ func (b *bench) tableCommand() *cli.Command {
 			&cli.StringFlag{Name: "to", Usage: "`END` last row"},
 			&cli.StringFlag{Name: "step", Usage: "`STEP` from row to row, a plain number on the scale of the rows"},
 			&cli.StringFlag{Name: "body", Usage: "`MATERIAL` of the instrument (temperature): glass, borosilicate, polycarbonate"},
+			&cli.StringFlag{Name: "og", Usage: "`OG` original gravity of a fermenting liquid (temperature)"},
 			&cli.StringFlag{Name: "method", Usage: "`ID` correction or ABV method"},
 			&cli.StringFlag{Name: "modulus", Value: "145", Usage: "`M` modulus of the Baumé scale: 145 or 144.3"},
 		}, fitFlags()...),
 	}, `gylebook table scales --from 1.030 --to 1.060 --step 0.005
 		gylebook table temperature --basis 60/60F --units F
-		gylebook table alcohol --method cutaia2009 --markdown`, b.table)
+		gylebook table alcohol --method cutaia2009 --format markdown`, b.table)
 }
 
 func (b *bench) table(c *cli.Context) error {
 	charts := map[string]func(*cli.Context) (sheet, error){
 		"scales": b.scalesChart, "temperature": b.temperatureChart, "alcohol": b.alcoholChart,
 	}
-	if c.Args().Len() != 1 {
+	if c.Args().Len() == 0 {
 		return missing(c.Command, "the chart")
+	}
+	if c.Args().Len() > 1 {
+		return tooMany(c, 1)
 	}
 	chart, ok := charts[c.Args().First()]
 	if !ok {
@@ -79,7 +86,7 @@ func spanOf(c *cli.Context, def span, parse func(string) (float64, error)) (span
 		}
 	}
 	if text := c.String("step"); text != "" {
-		v, err := asread.ParseNumber(text)
+		v, err := flagNumber("step", text)
 		if err != nil {
 			return s, err
 		}

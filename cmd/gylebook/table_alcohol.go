@@ -58,6 +58,9 @@ func (b *bench) alcoholChart(c *cli.Context) (sheet, error) {
 				values, cells = append(values, nil), append(cells, "—")
 				continue
 			}
+			if s.explain == nil {
+				s.explain = append([]string{firstRow}, attenuation.ExplainAlcohol(g, e)...)
+			}
 			values, cells = append(values, float64(e.Alcohol.ABV)), append(cells, fixed(float64(e.Alcohol.ABV), 1))
 			s.notes = append(s.notes, e.Notes...)
 		}

@@ -39,6 +39,9 @@ func (b *bench) scalesChart(c *cli.Context) (sheet, error) {
 		if err != nil {
 			return err
 		}
+		if s.explain == nil {
+			s.explain = append([]string{firstRow}, gravity.ExplainConversion(conv, b.set.scale, v, basis, f)...)
+		}
 		var r tables.Record
 		var cells []string
 		for _, col := range show {

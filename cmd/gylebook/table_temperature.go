@@ -16,10 +16,10 @@ import (
 
 // temperatureMarks are the readings over the columns of a temperature chart.
 var temperatureMarks = map[gravity.Scale][]float64{
-	gravity.ScaleSG:       {1.000, 1.020, 1.040, 1.060, 1.080, 1.100},
-	gravity.ScalePlato:    {0, 5, 10, 15, 20, 25},
-	gravity.ScaleBrix:     {0, 5, 10, 15, 20, 25},
-	gravity.ScalePoints:   {0, 20, 40, 60, 80, 100},
+	gravity.ScaleSG:       {0.990, 1.000, 1.020, 1.040, 1.060, 1.080, 1.100},
+	gravity.ScalePlato:    {-2, 0, 5, 10, 15, 20, 25},
+	gravity.ScaleBrix:     {-2, 0, 5, 10, 15, 20, 25},
+	gravity.ScalePoints:   {-10, 0, 20, 40, 60, 80, 100},
 	gravity.ScaleOechsle:  {0, 20, 40, 60, 80, 100},
 	gravity.ScaleKMW:      {0, 4, 8, 12, 16, 20},
 	gravity.ScaleBaume:    {0, 2, 4, 6, 8, 10, 12},
@@ -31,6 +31,9 @@ func (b *bench) temperatureChart(c *cli.Context) (sheet, error) {
 	r, err := b.readerOf(c)
 	if err != nil {
 		return sheet{}, err
+	}
+	if r.method == "" && r.oe > 0 {
+		r.method = "fermenting"
 	}
 	m, err := tempcorr.Methods.Find(r.method)
 	if err != nil {
@@ -54,14 +57,18 @@ func (b *bench) temperatureChart(c *cli.Context) (sheet, error) {
 	f := tempcorr.Float{Scale: scale, Basis: r.basis, Expansion: r.body.Expansion}
 	s := sheet{name: "table", columns: []string{"sample_temp_c"}}
 	p := scale.Info().Decimals
-	head := "°C"
+	head, best := "°C", "15 and 25 °C"
 	if b.set.units == asread.F {
-		head = "°F"
+		head, best = "°F", "59 and 77 °F"
+	}
+	liquid := "before fermentation"
+	if r.og != "" {
+		liquid = "fermenting from " + r.og
 	}
 	t := tables.Table{
-		Title:   fmt.Sprintf("add to a reading in %s %s, %s", scale.Info().Symbol, r.basis, r.body.ID),
+		Title:   fmt.Sprintf("add to a reading in %s %s, %s; %s", scale.Info().Symbol, r.basis, r.body.ID, liquid),
 		Columns: []tables.Column{{Head: head, Align: tables.Right}},
-		Foot:    []string{fmt.Sprintf("%s (%s); best between 15 and 25 °C; instrument error not included", m.ID, m.Source.Where)},
+		Foot:    []string{fmt.Sprintf("%s (%s); best between %s; instrument error not included", m.ID, m.Source.Where, best)},
 	}
 	marks := temperatureMarks[scale]
 	if len(marks) == 0 {
@@ -72,7 +79,7 @@ func (b *bench) temperatureChart(c *cli.Context) (sheet, error) {
 		if scale == gravity.ScaleSG {
 			text = fixed(mark, 3)
 		}
-		s.columns = append(s.columns, "correction_at_"+text)
+		s.columns = append(s.columns, "correction_"+scale.String()+"_at_"+text)
 		t.Columns = append(t.Columns, tables.Column{Head: text, Align: tables.Right})
 	}
 	err = rows.each(func(v float64) error {
@@ -93,6 +100,11 @@ func (b *bench) temperatureChart(c *cli.Context) (sheet, error) {
 			if err != nil {
 				return err
 			}
+			if s.explain == nil {
+				if s.explain, err = explainMark(scale, r, mark, temp); err != nil {
+					return err
+				}
+			}
 			values = append(values, got-mark)
 			cells = append(cells, asread.Signed(got-mark, p))
 		}
@@ -102,4 +114,16 @@ func (b *bench) temperatureChart(c *cli.Context) (sheet, error) {
 	})
 	s.tables = []tables.Table{t}
 	return s, err
+}
+
+// explainMark is the correction of one reading step by step; a chart has no
+// typed digits, so the reading itself is exact.
+func explainMark(scale gravity.Scale, r reader, mark float64, temp gravity.Celsius) ([]string, error) {
+	by := tempcorr.New(scale, r.basis, r.body)
+	seen := tempcorr.Observation{Reading: mark, T: temp, ReadAt: r.meniscus, OE: r.oe, Method: r.method}
+	res, err := tempcorr.Correct(by, seen)
+	if err != nil {
+		return nil, err
+	}
+	return append([]string{firstRow}, tempcorr.Explain(by, seen, res)...), nil
 }

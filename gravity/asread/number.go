@@ -53,8 +53,13 @@ func ParseNumber(text string) (Value, error) {
 // trimmed. The error is a *Refusal.
 func split(text string) (Value, string, error) {
 	text = strings.TrimSpace(text)
-	end := numberEnd(text)
-	num, rest := text[:end], strings.TrimSpace(text[end:])
+	// The apostrophe that guards a cell beginning with a minus in a CSV file.
+	body := text
+	if strings.HasPrefix(text, "'-") || strings.HasPrefix(text, "'+") {
+		body = text[1:]
+	}
+	end := numberEnd(body)
+	num, rest := body[:end], strings.TrimSpace(body[end:])
 	refuse := func(wanted, advice string) (Value, string, error) {
 		return Value{}, "", &Refusal{Read: text, Wanted: wanted, Advice: advice}
 	}

@@ -66,9 +66,12 @@ func ParseTemperature(text string, def Unit) (Temperature, error) {
 	var ps proposals
 	switch d := v.dec; {
 	case !within(d, b[0], b[1]):
-		r := &Refusal{Read: in, Wanted: "0 to 60 °C", Advice: "cool or warm the sample; wanted 0 to 60 °C"}
+		r := &Refusal{Read: in, Wanted: "0 to 60 °C", Advice: "warm the sample, then read again"}
+		if d.Cmp(b[1]) > 0 {
+			r.Advice = "cool the sample before reading: hot liquid burns and breaks glass"
+		}
 		if unit == F {
-			r.Wanted, r.Advice = "32 to 140 °F", "cool or warm the sample; wanted 32 to 140 °F"
+			r.Wanted = "32 to 140 °F"
 		}
 		if bare {
 			ps.addTemperature(d, other(unit))

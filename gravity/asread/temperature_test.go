@@ -54,7 +54,10 @@ func TestParseTemperatureAccepts(t *testing.T) {
 
 func TestParseTemperatureDoubtsAndRefuses(t *testing.T) {
 	const doubt, refusal = true, false
-	const warm = "cool or warm the sample; wanted 0 to 60 °C"
+	const (
+		warm = "warm the sample, then read again"
+		cool = "cool the sample before reading: hot liquid burns and breaks glass"
+	)
 	tests := []struct {
 		text  string
 		def   Unit
@@ -69,17 +72,17 @@ func TestParseTemperatureDoubtsAndRefuses(t *testing.T) {
 		{"61", C, refusal, "61F", ""},
 		{"68", C, refusal, "68F", ""},
 		{"140", C, refusal, "140F", ""},
-		{"141", C, refusal, "", warm},
+		{"141", C, refusal, "", cool},
 		{"-1", C, refusal, "", warm},
 		{"20", F, refusal, "20C", ""},
 		{"31", F, refusal, "31C", ""},
-		{"-1", F, refusal, "", "cool or warm the sample; wanted 32 to 140 °F"},
-		{"141", F, refusal, "", "cool or warm the sample; wanted 32 to 140 °F"},
+		{"-1", F, refusal, "", warm},
+		{"141", F, refusal, "", cool},
 		{"−1C", C, refusal, "", warm},
-		{"61C", C, refusal, "", warm},
-		{"60.01C", C, refusal, "", warm},
-		{"31F", C, refusal, "", "cool or warm the sample; wanted 32 to 140 °F"},
-		{"141F", C, refusal, "", "cool or warm the sample; wanted 32 to 140 °F"},
+		{"61C", C, refusal, "", cool},
+		{"60.01C", C, refusal, "", cool},
+		{"31F", C, refusal, "", warm},
+		{"141F", C, refusal, "", cool},
 		{"293K", C, refusal, "", "write it like 20C or 68F"},
 		{"12P", C, refusal, "", "write it like 20C or 68F"},
 		{"20", Unit("K"), refusal, "", "write it like 20C or 68F"},

@@ -1,0 +1,129 @@
+package main
+
+import (
+	"bufio"
+	"context"
+	"errors"
+	"fmt"
+	"io"
+	"io/fs"
+	"os"
+	"time"
+
+	"github.com/urfave/cli/v2"
+
+	"gylebook/attenuation/journal"
+	"gylebook/attenuation/journal/exchange"
+	"gylebook/tables"
+)
+
+func (b *bench) importCommand() *cli.Command {
+	return b.command(&cli.Command{
+		Name: "import", Usage: "take in an export: all of it or nothing", ArgsUsage: "FILE",
+		Description: `JSON Lines go into an empty journal and are verified. CSV: what was typed is taken in, the rest is reckoned anew,
+			and figures that differ are reported; byte order mark, delimiter and decimal mark are found out. Every refused row is
+			named and then nothing is written. "-" reads stdin.`,
+		Flags: []cli.Flag{
+			&cli.BoolFlag{Name: "dry-run", Usage: "report, and write nothing"},
+			&cli.BoolFlag{Name: "create", Usage: "make batches and instruments that the journal lacks"},
+		},
+	}, `gylebook import readings.csv --dry-run
+		gylebook import readings.csv --create
+		gylebook import season.jsonl --journal copy.db`, b.importFile)
+}
+
+func (b *bench) importFile(c *cli.Context) error {
+	if c.Args().Len() != 1 {
+		return wanted(c, "one file")
+	}
+	in, err := b.openInput(c.Args().First())
+	if err != nil {
+		return err
+	}
+	defer func() { _ = in.Close() }()
+	file := bufio.NewReaderSize(in, 64<<10)
+	dry := c.Bool("dry-run")
+	if isLines(file) {
+		if dry {
+			return b.checkLines(c.Context, file)
+		}
+		return b.writing(c.Context, func(s journal.Store) error { return b.restore(c.Context, s, file) })
+	}
+	open := b.writing
+	if dry {
+		open = b.withJournal
+	}
+	return open(c.Context, func(s journal.Store) error {
+		report, err := exchange.Import(c.Context, s, b.by(), b.set.now, file, exchange.Options{
+			DryRun: dry, Create: c.Bool("create"), Location: time.Local,
+		})
+		if err != nil && !errors.Is(err, exchange.ErrRefused) {
+			return err
+		}
+		return b.reportImport(report, dry, err)
+	})
+}
+
+// openInput opens a file to read, "-" for stdin.
+func (b *bench) openInput(name string) (io.ReadCloser, error) {
+	if name == "-" {
+		return io.NopCloser(b.in), nil
+	}
+	f, err := os.Open(name)
+	if err != nil {
+		why := err.Error()
+		if errors.Is(err, fs.ErrNotExist) {
+			why = "no file " + name
+		}
+		return nil, &exitError{exitNoInput, why, ""}
+	}
+	return f, nil
+}
+
+// isLines reports whether a file begins as JSON Lines do, with an object.
+func isLines(file *bufio.Reader) bool {
+	head, _ := file.Peek(512)
+	for _, r := range string(head) {
+		switch r {
+		case '\ufeff', ' ', '\t', '\r', '\n':
+		default:
+			return r == '{'
+		}
+	}
+	return false
+}
+
+// restore fills an empty journal.
+func (b *bench) restore(ctx context.Context, s journal.Store, file io.Reader) error {
+	n, err := s.Restore(ctx, exchange.ReadLines(file))
+	if errors.Is(err, journal.ErrNotEmpty) {
+		return dataError("name a new one with --journal", "JSON Lines go into an empty journal: %v", err)
+	}
+	if err != nil {
+		return err
+	}
+	return b.printPlace("import", b.place(), n)
+}
+
+// checkLines verifies JSON Lines without a journal.
+func (b *bench) checkLines(ctx context.Context, file io.Reader) error {
+	var n int64
+	chain := ""
+	for e, err := range exchange.ReadLines(file) {
+		if err != nil {
+			return err
+		}
+		if ctx.Err() != nil {
+			return ctx.Err()
+		}
+		if err := e.Verify(chain); err != nil {
+			return err
+		}
+		n, chain = n+1, e.Chain
+	}
+	return b.print(sheet{
+		name:    "import",
+		records: []tables.Record{{{Name: "entries", Value: int(n)}, {Name: "dry_run", Value: true}}},
+		ladder:  &tables.Ladder{Answer: []string{fmt.Sprintf("%d entries hold; nothing was written", n)}},
+	})
+}

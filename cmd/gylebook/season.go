@@ -1,0 +1,136 @@
+package main
+
+import (
+	"cmp"
+	"fmt"
+	"strconv"
+
+	"github.com/urfave/cli/v2"
+
+	"gylebook/attenuation/journal"
+	"gylebook/attenuation/season"
+	"gylebook/tables"
+)
+
+func (b *bench) seasonCommand() *cli.Command {
+	return b.command(&cli.Command{
+		Name: "season", Usage: "what each product and yeast came to",
+		ArgsUsage: "[YEAR]",
+		Description: `The year is that of pitching. Figures of a product and yeast are medians of its closed batches, with the
+			interquartile range; days run from pitching to the last fall. --json and --csv have one row a batch.`,
+		Flags: []cli.Flag{
+			&cli.StringFlag{Name: "product", Usage: "`NAME` of the product"},
+			&cli.StringFlag{Name: "yeast", Usage: "`NAME` of the yeast"},
+		},
+	}, `gylebook season
+		gylebook season 2026 --product "Lane Bitter"
+		gylebook season 2026 --csv`, b.season)
+}
+
+func (b *bench) season(c *cli.Context) error {
+	f := journal.Filter{Product: c.String("product"), Yeast: c.String("yeast")}
+	if c.Args().Len() > 1 {
+		return usageError("", "read %d values, wanted a year at most; usage: gylebook season [YEAR]", c.Args().Len())
+	}
+	if text := c.Args().First(); text != "" {
+		year, err := strconv.Atoi(text)
+		if err != nil || year < 1900 || year > 9999 {
+			return dataError("type a year such as 2026", "read %.20q, wanted a year from 1900 to 9999", text)
+		}
+		f.Year = year
+	}
+	return b.withJournal(c.Context, func(s journal.Store) error {
+		book, err := bookOf(c.Context, s)
+		if err != nil {
+			return err
+		}
+		var rows []season.Row
+		count := b.counter("batches")
+		for row, err := range season.Rows(c.Context, s, f, book) {
+			if err != nil {
+				count.end()
+				return err
+			}
+			rows = append(rows, row)
+			count.to(len(rows))
+		}
+		count.end()
+		return b.print(b.seasonSheet(f, rows))
+	})
+}
+
+func (b *bench) seasonSheet(f journal.Filter, rows []season.Row) sheet {
+	s := sheet{name: "season", columns: names(seasonRecord(season.Row{}))}
+	open := 0
+	for _, r := range rows {
+		if !b.isText() {
+			s.records = append(s.records, seasonRecord(r))
+		}
+		if r.Open {
+			open++
+		}
+	}
+	groups := season.Groups(rows)
+	if b.set.format == tables.JSON {
+		records := make([]tables.Record, len(groups))
+		for i, g := range groups {
+			records[i] = groupRecord(g)
+		}
+		s.summary = tables.Record{{Name: "groups", Value: records}}
+	}
+	title := "all seasons"
+	if f.Year != 0 {
+		title = fmt.Sprintf("season %d", f.Year)
+	}
+	title += fmt.Sprintf(": %d batches, %d open", len(rows), open)
+	if len(rows) == 0 {
+		s.ladder = &tables.Ladder{Answer: []string{title}}
+		return s
+	}
+	s.tables = []tables.Table{seasonTable(groups, title, b.set.width, b.set.plain || b.set.width < 60)}
+	return s
+}
+
+// seasonTable has a line a product and yeast. Where lines are stacked the names are
+// whole, and no cell is cut.
+func seasonTable(groups []season.Group, title string, width int, stacked bool) tables.Table {
+	right := func(head string) tables.Column { return tables.Column{Head: head, Align: tables.Right} }
+	heads := []string{"n", "app. %", "IQR", "real %", "IQR", "% vol", "IQR", "days"}
+	if stacked {
+		heads = []string{
+			"batches closed+open", "apparent attenuation %", "apparent IQR", "real attenuation %", "real IQR",
+			"alcohol % vol", "alcohol IQR", "days to the last fall",
+		}
+	}
+	t := tables.Table{
+		Title:   title,
+		Columns: []tables.Column{{Head: "product"}, {Head: "yeast"}},
+		Foot: []string{
+			"medians of the closed batches; IQR: width of the middle half; n closed+open",
+			"attenuation on extract; days from pitching to the last fall",
+		},
+	}
+	for _, head := range heads {
+		t.Columns = append(t.Columns, right(head))
+	}
+	for _, g := range groups {
+		n := strconv.Itoa(g.Batches - g.Open)
+		if g.Open > 0 {
+			n += "+" + strconv.Itoa(g.Open)
+		}
+		row := []string{g.Product, cmp.Or(g.Yeast, none), n}
+		for _, one := range []season.Spread{g.Apparent, g.Real, g.ABV, g.Days} {
+			median, width := none, none
+			if one.N > 0 {
+				median, width = fixed(one.Median, 1), fixed(one.IQR(), 1)
+			}
+			row = append(row, median, width)
+		}
+		// The width of the days is left to machines: the line is full.
+		t.Rows = append(t.Rows, row[:len(t.Columns)])
+	}
+	if !stacked {
+		squeeze(&t, width, 0, 1)
+	}
+	return t
+}
