@@ -61,11 +61,13 @@ func (s Scale) IsMass() bool { return s == ScalePlato || s == ScaleBrix }
 
 // FindScale returns the scale with this id, or an *method.UnknownError.
 func FindScale(id string) (Scale, error) {
-	known := make([]string, len(scales))
-	for i, s := range scales {
+	for _, s := range scales {
 		if s.ID == id {
 			return s.Scale, nil
 		}
+	}
+	known := make([]string, len(scales))
+	for i, s := range scales {
 		known[i] = s.ID
 	}
 	return 0, &method.UnknownError{What: "scale", Got: id, Known: known}

@@ -64,6 +64,10 @@ const (
 // 0 to 60 °C, best 15 to 25. Within 0.03 °Bx of Bigelow & Stevenson (1923).
 // Sources: ICUMSA SPS-4, ISO 1768:1975.
 func Sucrose(f Float, r float64, s Sample) (float64, error) {
+	if f.Scale == gravity.ScaleSG {
+		x := IsothermalAt(f.Basis, f.Expansion, s.T)
+		return x.Correct(r)
+	}
 	mark, err := f.MarkDensity(r)
 	if err != nil {
 		return 0, err

@@ -1,7 +1,9 @@
 package journal
 
 import (
+	"fmt"
 	"slices"
+	"strings"
 	"time"
 
 	"gylebook/attenuation"
@@ -79,7 +81,7 @@ func (v *View) steps(book *Book) {
 		}
 		if a.why != "" && broken == "" {
 			broken = a.why
-			v.note(NoteBasis, "%s (entry %d): attenuation and alcohol are not known from here on; void it and enter it anew", a.why, a.event.Number)
+			v.note(NoteBasis, "%s (entry %d): attenuation and alcohol are not known from here on; %s", a.why, a.event.Number, v.remedy(a))
 		}
 		switch {
 		case broken != "":
@@ -103,18 +105,21 @@ type change struct {
 
 // amounts follows the batch's amount through all events that are not void.
 func (v *View) amounts(book *Book) []change {
-	now := v.start()
+	now, missing := v.start(), noVolume
 	var list []change
-	for _, e := range ordered(v.Record.Events, eventAt) {
+	for _, e := range ordered(slices.Concat(v.Record.Events, v.given()), eventAt) {
 		if e.Void {
 			continue
 		}
-		c := change{event: e, changes: changesExtract(e.Body.What)}
-		if c.changes {
+		out := e.Body.From != "" && e.Body.From == v.Record.Batch.ID && e.Body.Batch != e.Body.From
+		c := change{event: e, changes: !out && changesExtract(e.Body.What)}
+		if out {
+			now, missing = less(now, e.Body.VolumeL, e.Body.MassKg, missing)
+		} else if c.changes {
 			var w attenuation.Wort
 			w, c.why = e.Body.addition(book)
 			if c.why == "" && v.OG != nil && !now.Known() {
-				c.why = noVolume
+				c.why = missing
 			}
 			if c.why != "" || v.OG == nil {
 				now = attenuation.Wort{}
@@ -122,7 +127,7 @@ func (v *View) amounts(book *Book) []change {
 				now = now.Add(w)
 			}
 		} else if e.Body.What != Priming {
-			now = lessLoss(now, e.Body.VolumeL)
+			now, missing = less(now, e.Body.VolumeL, "", missing)
 		}
 		c.wort = now
 		list = append(list, c)
@@ -132,15 +137,34 @@ func (v *View) amounts(book *Book) []change {
 
 // start is the batch as it was pitched.
 func (v *View) start() attenuation.Wort {
-	litres, ok := number(v.Record.Batch.Volume)
+	litres, ok := number(v.Record.Volume())
 	if !ok || v.OG == nil {
 		return attenuation.Wort{}
 	}
 	return attenuation.FromVolume(litres, v.OG.Extract, 20)
 }
 
-// amountAt is the batch after every event until t.
-func (v *View) amountAt(t time.Time) attenuation.Wort {
+// remedy is what closes a gap.
+func (v *View) remedy(a change) string {
+	anew := fmt.Sprintf("type gylebook void %d --reason TEXT and enter it anew", a.event.Number)
+	switch _, mass := number(a.event.Body.MassKg); {
+	case a.why == noVolume:
+		return "type gylebook batch volume " + v.Record.Batch.ID + " 100L, with its own volume"
+	case strings.HasSuffix(a.why, "without mass"):
+		return anew + " with --mass"
+	case strings.HasSuffix(a.why, "without mass and gravity") && !mass:
+		return anew + " with --mass and --gravity"
+	case strings.HasSuffix(a.why, "without mass or volume"):
+		return anew + " with --volume"
+	case strings.HasSuffix(a.why, "gravity"), a.event.Body.What == Blend:
+		return anew + " with --gravity"
+	}
+	return anew
+}
+
+// AmountAt returns the batch after every event until t, at its original state; the
+// zero Wort when its volume is not known.
+func (v View) AmountAt(t time.Time) attenuation.Wort {
 	now := v.start()
 	for _, c := range v.held {
 		if c.event.Body.At.After(t) {
@@ -151,16 +175,31 @@ func (v *View) amountAt(t time.Time) attenuation.Wort {
 	return now
 }
 
-// lessLoss takes litres (at 20 °C) away. More than there is leaves nothing known.
-func lessLoss(w attenuation.Wort, volume string) attenuation.Wort {
-	litres, ok := number(volume)
-	if !ok || !w.Known() {
-		return w
+// given are the blends of this batch into others.
+func (v *View) given() []Numbered[Event] {
+	return slices.DeleteFunc(slices.Clone(v.Record.Given), func(e Numbered[Event]) bool { return e.Body.Batch == v.Record.Batch.ID })
+}
+
+// overdrawn is why a batch of which more was taken than it held is not known.
+const overdrawn = "more taken out than was left"
+
+// less takes a mass, else litres at 20 °C, away. More than there is leaves nothing
+// known, and says so in place of what was missing before.
+func less(w attenuation.Wort, volume, mass, missing string) (attenuation.Wort, string) {
+	if !w.Known() {
+		return w, missing
 	}
-	lost := attenuation.FromVolume(litres, w.Extract, 20)
-	if !(lost.MassKg < w.MassKg) {
-		return attenuation.Wort{}
+	lost, ok := number(mass)
+	if !ok {
+		litres, given := number(volume)
+		if !given {
+			return w, missing
+		}
+		lost = attenuation.FromVolume(litres, w.Extract, 20).MassKg
 	}
-	w.MassKg -= lost.MassKg
-	return w
+	if !(lost < w.MassKg) {
+		return attenuation.Wort{}, overdrawn
+	}
+	w.MassKg -= lost
+	return w, missing
 }

@@ -120,7 +120,7 @@ func TestLossesCount(t *testing.T) {
 	}
 	near(t, "OE", float64(v.Basis[0].OE), 14.03, 0.005)
 	b.rec.Events[0].Body.VolumeL = "100"
-	if v = Derive(b.rec, nil); !v.Basis[0].Broken || v.Basis[0].Why != "batch volume not known" {
+	if v = Derive(b.rec, nil); !v.Basis[0].Broken || v.Basis[0].Why != "more taken out than was left" {
 		t.Errorf("got %+v", v.Basis)
 	}
 }

@@ -120,6 +120,14 @@ type Limit struct {
 	Gravity Typed     `json:"gravity"`
 }
 
+// Volume is the volume of a batch at its original gravity, entered or put right
+// after it was opened.
+type Volume struct {
+	Batch  string    `json:"batch"`
+	At     time.Time `json:"at"`
+	Volume string    `json:"volume_l"` // litres at 20 °C, as typed
+}
+
 // Close ends a batch.
 type Close struct {
 	Batch string    `json:"batch"`
@@ -205,6 +213,9 @@ func (OG) Kind() Kind { return KindOG }
 func (Limit) Kind() Kind { return KindLimit }
 
 // Kind implements Body.
+func (Volume) Kind() Kind { return KindVolume }
+
+// Kind implements Body.
 func (Close) Kind() Kind { return KindClose }
 
 // Kind implements Body.
@@ -233,6 +244,8 @@ func newBody(k Kind) (any, error) {
 		return new(OG), nil
 	case KindLimit:
 		return new(Limit), nil
+	case KindVolume:
+		return new(Volume), nil
 	case KindClose:
 		return new(Close), nil
 	case KindReading:
@@ -261,6 +274,8 @@ func value(p any) Body {
 	case *OG:
 		return *b
 	case *Limit:
+		return *b
+	case *Volume:
 		return *b
 	case *Close:
 		return *b

@@ -12,7 +12,18 @@ import (
 // ErrIncomplete says that a body lacks something or is out of bounds.
 var ErrIncomplete = errors.New("incomplete entry")
 
+// incomplete is an ErrIncomplete that says what is wrong and nothing else.
+type incomplete struct{ text string }
+
+func (e *incomplete) Error() string { return e.text }
+
+// Unwrap returns ErrIncomplete.
+func (e *incomplete) Unwrap() error { return ErrIncomplete }
+
 func wrapf(err error, format string, args ...any) error {
+	if err == ErrIncomplete { //nolint:errorlint // the sentinel itself, whose text says nothing to who typed
+		return &incomplete{fmt.Sprintf(format, args...)}
+	}
 	return fmt.Errorf("%s: %w", fmt.Sprintf(format, args...), err)
 }
 

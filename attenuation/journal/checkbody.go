@@ -157,6 +157,11 @@ func (l Limit) Check() error {
 }
 
 // Check implements Body.
+func (v Volume) Check() error {
+	return first(CheckID("batch", v.Batch), checkTime("at", v.At), checkNumber("volume, L", v.Volume, true, 0.001, 1e7))
+}
+
+// Check implements Body.
 func (c Close) Check() error {
 	return first(CheckID("batch", c.Batch), checkTime("at", c.At), checkText("note", c.Note, false))
 }

@@ -13,19 +13,21 @@ import (
 // values corrects the readings of the span, the newest first so that it can end
 // early.
 func (v *View) values(book *Book, readings []Numbered[Reading], s span) {
-	var minutes []time.Time
+	// Readings of one minute follow each other: only the last minute is compared.
+	minutes, last := 0, time.Time{}
 	for k := len(readings) - 1; k >= 0; k-- {
 		r := &readings[k]
 		if !s.until.IsZero() && r.Body.TakenAt.After(s.until) {
 			continue
 		}
 		m := minute(r.Body.TakenAt)
-		if s.limited && len(minutes) >= s.last && !slices.ContainsFunc(minutes, m.Equal) {
+		counted := minutes > 0 && m.Equal(last)
+		if s.limited && minutes >= s.last && !counted {
 			break
 		}
 		one := v.correct(book, r)
-		if one.Counts() && !slices.ContainsFunc(minutes, m.Equal) {
-			minutes = append(minutes, m)
+		if one.Counts() && !counted {
+			minutes, last = minutes+1, m
 		}
 		v.Values = append(v.Values, one)
 	}

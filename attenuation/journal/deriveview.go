@@ -12,7 +12,7 @@ import (
 var ErrPrimed = errors.New(primedReason)
 
 // Open reports whether the batch is open.
-func (v View) Open() bool { return v.Record != nil && v.Record.Closed == nil }
+func (v View) Open() bool { return v.Record != nil && v.Record.Closed == nil && !v.Record.Void }
 
 // Last returns the newest value that counts, nil when there is none. Of the
 // replicates of one minute it is the one entered last; their mean is in it.
@@ -42,20 +42,31 @@ func (v View) Counting() []*Value {
 	return list
 }
 
-// Fall24h returns the fall of SG 20/20, in points in 24 h, between the last two
-// distinct minutes that count. ok is false with fewer, or with an addition between
-// the two.
+// shortest is the shortest time between two readings that a daily rate is made
+// of: over less, the half point of a reading becomes many points a day (judged).
+const shortest = 6 * time.Hour
+
+// Fall24h returns the fall of SG 20/20, in points in 24 h, between the last reading
+// that counts and the newest one at least six hours before it. ok is false without
+// such a pair, or with an addition between the two.
 func (v View) Fall24h() (points float64, ok bool) {
 	list := v.Counting()
 	if len(list) < 2 {
 		return 0, false
 	}
-	a, b := list[len(list)-2], list[len(list)-1]
-	days := b.Source.TakenAt.Sub(a.Source.TakenAt).Hours() / 24
-	if days <= 0 || v.changedBetween(a.Source.TakenAt, b.Source.TakenAt) {
-		return 0, false
+	b := list[len(list)-1]
+	for k := len(list) - 2; k >= 0; k-- {
+		a := list[k]
+		between := b.Source.TakenAt.Sub(a.Source.TakenAt)
+		if between < shortest {
+			continue
+		}
+		if v.changedBetween(a.Source.TakenAt, b.Source.TakenAt) {
+			return 0, false
+		}
+		return 1000 * float64(a.SG-b.SG) / (between.Hours() / 24), true
 	}
-	return 1000 * float64(a.SG-b.SG) / days, true
+	return 0, false
 }
 
 // Vessel returns where the batch is, after its moves; "" when not known.
@@ -131,7 +142,7 @@ func (v View) ExpectedABV() (gravity.VolPct, error) {
 		}
 		sum = sum.Add(w)
 	}
-	w := v.amountAt(v.Primed)
+	w := v.AmountAt(v.Primed)
 	if !w.Known() {
 		return 0, wrapf(ErrNoStrength, "%s", noVolume)
 	}

@@ -21,6 +21,7 @@ const (
 	KindBatch       Kind = "batch"       // a batch is opened
 	KindOG          Kind = "og"          // a reading of its original gravity
 	KindLimit       Kind = "limit"       // its limit of attenuation, by a forced ferment
+	KindVolume      Kind = "volume"      // its volume, where that was not known when it was opened
 	KindClose       Kind = "close"       // it is closed
 	KindReading     Kind = "reading"     // a gravity of a batch
 	KindEvent       Kind = "event"       // what was done to a batch

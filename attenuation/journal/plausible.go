@@ -7,6 +7,7 @@ import (
 	"slices"
 	"time"
 
+	"gylebook/gravity/asread"
 	"gylebook/gravity/method"
 )
 
@@ -16,6 +17,14 @@ type Situation struct {
 	Target *Record // the batch that it is for
 	Book   *Book
 	Others []*Record // the other open batches
+	// Find gives more of them. It is asked only when the reading does not fit its
+	// own batch; nil has none.
+	Find func() []*Record
+
+	// Expect tells where a batch is expected at a time from its readings until then,
+	// in SG 20/20, with the standard deviation of that. Where it has no answer, and
+	// where it is nil, Expected has one.
+	Expect func(rec *Record, at time.Time) (sg, sd float64, ok bool)
 }
 
 // Codes of a Hold.
@@ -32,6 +41,9 @@ const (
 	HoldUncorrected = "not-corrected" // no liquid reads so
 	HoldRise        = "rise"          // over a reading before it, or under one after it
 	HoldAboveOG     = "above-og"      // over the effective original gravity
+	HoldFall        = "fall"          // faster than anything ferments
+	HoldSpread      = "spread"        // far from another reading of the same minute
+	HoldSwapped     = "swapped"       // gravity and temperature changed places
 	HoldOther       = "other-batch"   // fits another open batch far better
 )
 
@@ -93,6 +105,8 @@ func Judge(s Situation, r Reading) ([]method.Note, *Hold) {
 		if r.Keep == "" {
 			return nil, hold
 		}
+		// What is suspect is in no mean.
+		notes = slices.DeleteFunc(notes, func(n method.Note) bool { return n.Code == NoteReplicate })
 		notes = append(notes, method.Note{Code: method.WithReason, Text: "kept as suspect: " + hold.Text})
 	}
 	return notes, nil
@@ -153,6 +167,9 @@ func (s Situation) possible(r Reading) *Hold {
 	final := func(code, tip, format string, args ...any) *Hold {
 		return &Hold{Code: code, Text: fmt.Sprintf(format, args...), Tip: tip, Final: true}
 	}
+	if swapped(r) {
+		return final(HoldSwapped, "type "+r.Temp.Text+" "+r.Gravity.Text, "read gravity %.24q at temperature %.24q, wanted the gravity first", r.Gravity.Text, r.Temp.Text)
+	}
 	// The parsers know what to type instead, Check does not.
 	_, errGravity := r.Gravity.Reading()
 	_, errTemp := r.Temp.Temperature()
@@ -174,6 +191,13 @@ func (s Situation) possible(r Reading) *Hold {
 		return final(HoldBeforePitch, "before pitching only the original gravity is read: batch og "+b.ID, "taken at %s, wanted a time after pitching at %s", clock(r.TakenAt), clock(*b.Pitched))
 	}
 	return nil
+}
+
+// swapped reports whether the temperature was typed as only a gravity is: near 1,
+// with three decimals.
+func swapped(r Reading) bool {
+	t, err := asread.ParseNumber(r.Temp.Text)
+	return err == nil && t.Places() >= 3 && t.Float() > 0.95 && t.Float() < 1.2
 }
 
 func clock(t time.Time) string { return t.Format("2006-01-02 15:04 -07:00") }

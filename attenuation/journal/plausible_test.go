@@ -85,9 +85,18 @@ func TestJudge(t *testing.T) {
 		{name: "not against the original gravity", hours: -0.5, text: "1.050", temp: "20"},
 		{name: "above the original gravity", hours: -0.5, text: "1.055", temp: "20", code: HoldAboveOG},
 		{
-			name: "first reading above the original gravity after priming", hours: -0.5, text: "1.055", temp: "20",
+			name: "first reading above the original gravity after priming", hours: -0.5, text: "1.0525", temp: "20",
 			edit: func(b *builder, _ *Reading) { b.event(-0.7, Event{What: Priming, MassKg: "1"}) },
 		},
+
+		// 10 points under 1.040 in a minute; 43 points in 24 h are 3 + 40, and half a
+		// point more is too much.
+		{name: "a fall in a minute", hours: 24 + 1./60, text: "1.030", temp: "20", code: HoldFall},
+		{name: "a fast day", hours: 48, text: "0.998", temp: "20"},
+		{name: "faster than anything", hours: 47.4, text: "0.9955", temp: "20", code: HoldFall},
+		{name: "a first reading far under the original gravity", hours: 1, text: "1.010", temp: "20", code: HoldFall, edit: func(b *builder, _ *Reading) { b.rec.Readings = nil }},
+		{name: "another value of the minute, far off", hours: 24, text: "1.044", temp: "20", code: HoldSpread},
+		{name: "swapped", hours: 48, text: "20", temp: "1.030", code: HoldSwapped, final: true, hint: "type 1.030 20"},
 
 		{name: "future by a minute", hours: 48 + 1./60, text: "1.030", temp: "20"},
 		{name: "future", hours: 48.1, text: "1.030", temp: "20", code: HoldFuture, final: true},

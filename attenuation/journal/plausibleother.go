@@ -3,6 +3,7 @@ package journal
 import (
 	"fmt"
 	"math"
+	"slices"
 	"time"
 
 	"gylebook/gravity"
@@ -90,13 +91,28 @@ const (
 	unfitting   = 3.0 // standard deviations from the target's own at least …
 	leastMiss   = 5.0 // … and this many points …
 	timesCloser = 3.0 // … and this many times as far as from the other's
+
+	// A forecast costs far more than a straight line: batches whose line is further
+	// off than this are not asked for one.
+	inReach = 10.0
 )
+
+func (s Situation) foretold(rec *Record, at time.Time) (sg, sd float64, ok bool) {
+	if s.Expect == nil {
+		return 0, 0, false
+	}
+	return s.Expect(rec, at)
+}
 
 // closer looks for another open batch that the reading fits. Without a hold so far
 // it makes one when another fits far better: the reading is within 2 points of what
 // the other is expected at, and off its own batch's by more than 3 standard
 // deviations, 5 points, and 3 times the distance to the other. A hold there is
 // already names the other batch that is within 2 points and 3 times closer.
+//
+// The expected gravities are those of s.Expect where it has one. It is asked only
+// about a reading that is 5 points off the straight line, or held already: most are
+// not, and a forecast takes its time.
 //
 // So a fall that is fast but possible is accepted as long as no other batch is
 // near, and a slow batch is not confused with its neighbour for a point or two.
@@ -110,14 +126,25 @@ func (s Situation) closer(view View, one, before *Value, hold *Hold) *Hold {
 	}
 	expected, sd, known := view.expected(list, at)
 	miss := 1000 * math.Abs(x-expected)
+	if hold == nil && !(known && miss > leastMiss) {
+		return nil
+	}
+	if sg, dev, ok := s.foretold(s.Target, at); known && ok {
+		expected, sd = sg, dev
+		miss = 1000 * math.Abs(x-expected)
+	}
 	if hold == nil && !(known && miss > max(leastMiss, unfitting*1000*sd)) {
 		return nil
 	}
 	if !known {
 		miss = math.Inf(1)
 	}
+	others := s.Others
+	if s.Find != nil {
+		others = slices.Concat(others, s.Find())
+	}
 	best, vessel, id, bestSG := fits, "", "", 0.0
-	for _, rec := range s.Others {
+	for _, rec := range others {
 		if rec == nil || rec.Batch.ID == s.Target.Batch.ID || rec.Closed != nil {
 			continue
 		}
@@ -126,7 +153,16 @@ func (s Situation) closer(view View, one, before *Value, hold *Hold) *Hold {
 		if !ok {
 			continue
 		}
+		// A batch that has slowed down is still where it was read last.
+		if last := other.Last(); last != nil && math.Abs(x-float64(last.SG)) < math.Abs(x-sg) {
+			sg = float64(last.SG)
+		}
 		d := 1000 * math.Abs(x-sg)
+		if d < inReach {
+			if foretold, _, ok := s.foretold(rec, at); ok {
+				d, sg = 1000*math.Abs(x-foretold), foretold
+			}
+		}
 		if d*timesCloser <= miss && (d < best || d == best && (id == "" || rec.Batch.ID < id)) {
 			best, vessel, id, bestSG = d, other.Vessel(), rec.Batch.ID, sg
 		}

@@ -31,6 +31,15 @@ func (s Situation) compare(view View, one *Value, replicates []int64) *Hold {
 	if hold == nil {
 		hold = s.aboveOG(view, one)
 	}
+	if hold == nil {
+		hold = s.plunge(view, before, one)
+	}
+	if hold == nil && after != nil {
+		hold = s.plunge(view, one, after)
+	}
+	if hold == nil {
+		hold = spread(view, one, replicates)
+	}
 	return s.closer(view, one, before, hold)
 }
 
@@ -79,8 +88,66 @@ func (s Situation) rise(view View, a, b, one *Value) *Hold {
 	return h
 }
 
+// A fall is doubted when it is more than fastestFall points in an hour and
+// fallSlack points besides. Forty points in a day are a hot and strong start;
+// readings of real courses (research data of beer and wine) stay under thirty
+// (judged).
+const (
+	fastestFall = 40.0 / 24
+	fallSlack   = 3.0
+)
+
+// plunge holds a fall from a to b that is faster than anything ferments, one of
+// them the new reading. Without a reading before it a is nil and the fall is that
+// from the original gravity since pitching.
+func (s Situation) plunge(view View, a, b *Value) *Hold {
+	from, since, what := float64(b.OG), view.Pitched, "the original gravity"
+	if a != nil {
+		from, since, what = float64(a.SG), a.Source.TakenAt, "the reading before it"
+	} else if b.OE <= 0 || s.Target.Batch.Pitched == nil {
+		return nil
+	}
+	hours := b.Source.TakenAt.Sub(since).Hours()
+	if hours < 0 || view.changedBetween(since, b.Source.TakenAt) || view.addedBetween(since, b.Source.TakenAt) {
+		return nil
+	}
+	points := asread.RoundDiff(from, float64(b.SG), 1000, 1, asread.HalfUp)
+	if points <= fallSlack+fastestFall*hours {
+		return nil
+	}
+	return &Hold{Code: HoldFall, Tip: s.tip(), Text: fmt.Sprintf("%s is %s points under %s (%s) after %s",
+		four(float64(b.SG)), tenth(points), what, four(from), lasting(hours))}
+}
+
+// spread holds a reading that lies more than 2 points from another one of the same
+// minute: their mean would stand for neither.
+func spread(view View, one *Value, replicates []int64) *Hold {
+	for k := range view.Values {
+		v := &view.Values[k]
+		if !v.Counts() || !slices.Contains(replicates, v.Number) {
+			continue
+		}
+		if d := math.Abs(1000 * float64(v.Result.SG-one.Result.SG)); d > 2 {
+			return &Hold{
+				Code: HoldSpread, Tip: fmt.Sprintf("void %d --reason TEXT if that one was a slip, else read again", v.Number),
+				Text: fmt.Sprintf("%s is %s points from the other reading of this minute (entry %d, %s)",
+					four(own(one, one)), tenth(d), v.Number, four(float64(v.Result.SG))),
+			}
+		}
+	}
+	return nil
+}
+
 func four(x float64) string  { return asread.Fixed(x, 4, asread.HalfEven) }
 func tenth(x float64) string { return asread.Fixed(x, 1, asread.HalfEven) }
+
+// lasting is a span of hours, below one in minutes.
+func lasting(hours float64) string {
+	if hours < 1 {
+		return asread.Fixed(60*hours, 0, asread.HalfEven) + " min"
+	}
+	return tenth(hours) + " h"
+}
 
 func (s Situation) tip() string {
 	return "is it the wrong tank, or an addition that is not logged (event " + s.Target.Batch.ID + " sugar …)? else keep it as suspect: --keep REASON"

@@ -31,9 +31,28 @@ type Record struct {
 	Number   int64 // of the entry that opened it
 	OGs      []Numbered[OG]
 	Limits   []Numbered[Limit]
+	Volumes  []Numbered[Volume]
 	Readings []Numbered[Reading]
 	Events   []Numbered[Event]
-	Closed   *Numbered[Close] // nil while open; a void close is left out
+	// Given are the blends of this batch into others: events of those.
+	Given  []Numbered[Event]
+	Closed *Numbered[Close] // nil while open; a void close is left out
+	// Void marks a batch whose opening is void. Only a filter that asks for them
+	// returns such a record.
+	Void       bool
+	VoidReason string
+}
+
+// Volume returns the volume [L at 20 °C] as typed: the one entered last, else that
+// of the opening; "" when not known.
+func (r *Record) Volume() string {
+	text := r.Batch.Volume
+	for _, v := range ordered(r.Volumes, func(v Volume) time.Time { return v.At }) {
+		if !v.Void {
+			text = v.Body.Volume
+		}
+	}
+	return text
 }
 
 // Numbered is a body with its entry.
@@ -63,6 +82,8 @@ type Filter struct {
 	Year    int // of the pitch, else of the opening, in UTC
 	Open    bool
 	Closed  bool
+	Batch   string // this one alone
+	Void    bool   // void ones too, marked
 }
 
 // Reader is a consistent view of the journal.
@@ -73,9 +94,18 @@ type Reader interface {
 	Batch(ctx context.Context, id string) (*Record, error)
 	// Open returns every open batch with all that hangs on it, by vessel, then id.
 	Open(ctx context.Context) ([]*Record, error)
+	// OpenLast is Open with the newest n readings of each batch, void ones counted
+	// too, and others taken at the same time as the oldest of these. A batch whose
+	// pitching was not entered has all of them: the first tells when it began. With n
+	// of 0 or less no batch has any.
+	OpenLast(ctx context.Context, n int) ([]*Record, error)
 	// Batches runs over the batches that pass f, by product, then pitch, then id,
 	// holding one at a time.
 	Batches(ctx context.Context, f Filter) iter.Seq2[*Record, error]
+	// Finished runs over the batches of a product and a yeast that were closed before
+	// a time, the one that began last first, holding one at a time. Whoever stops
+	// early has not paid for those before.
+	Finished(ctx context.Context, product, yeast string, before time.Time) iter.Seq2[*Record, error]
 	// BatchIDs lists every id ever used, void batches too.
 	BatchIDs(ctx context.Context) ([]string, error)
 	// Entry returns one entry. ErrNotFound.
@@ -106,8 +136,9 @@ type Store interface {
 	//
 	// Each body must pass Check and what the journal holds: an id that is new
 	// (ErrExists), an instrument and a batch that exist (ErrNotFound), a batch that
-	// is open (ErrClosed; a void of any entry and a limit are allowed on a closed
-	// one), an instrument in use (ErrRetired), a voided entry that exists
+	// is open (ErrClosed; a void of any entry, a limit and a volume are allowed on a
+	// closed one), an instrument in use at the body's own time (ErrRetired; a second
+	// retirement always), a voided entry that exists
 	// (ErrNotFound), is not void (ErrVoided) and is no void itself (ErrNotFound).
 	// Other errors: ErrReadOnly, ErrDiskFull, ErrBusy, ErrNotWritten.
 	Append(ctx context.Context, by string, now time.Time, draft func(Reader) ([]Body, error)) ([]Entry, error)

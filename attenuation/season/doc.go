@@ -1,7 +1,8 @@
-// Package season sums up a season: one row a batch with its figures, and one group
-// a product and yeast with medians and spreads.
+// Package season sums up a season: one row a batch with its figures, one group a
+// product and yeast with medians and spreads, control charts of a product and what
+// the generations of a yeast did.
 //
-// Nothing is computed here that package journal does not derive; a row holds the
-// figures of the batch's last reading that counts, the same to the last digit as
-// those of the batch itself.
+// The figures of a row are those of the batch's last reading that counts, as package
+// journal derives it: the same to the last digit as those of the batch itself. The
+// course of the fall is interpolated between readings.
 package season

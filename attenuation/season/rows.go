@@ -37,6 +37,8 @@ type Row struct {
 	// LimitDifference is how many points of % the apparent attenuation lies below
 	// its limit; nil without a forced ferment.
 	LimitDifference *float64
+	// Course is of closed batches whose generation is known; else nil.
+	Course *Course
 }
 
 // noReading is why a batch that was never read has no figures.
@@ -67,7 +69,9 @@ func Of(rec *journal.Record, book *journal.Book) Row {
 		d := attenuation.LimitDifference(last.OE, last.Extract, *v.Limit)
 		row.LimitDifference = &d
 	}
-	if fall, ok := fell(v, book); ok {
+	w := newWalk(v, book)
+	row.Course = w.course()
+	if fall, ok := w.fell(); ok {
 		if days, ok := v.Days(fall); ok {
 			row.Days = &days
 		}

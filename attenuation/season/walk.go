@@ -8,28 +8,32 @@ import (
 	"gylebook/attenuation/journal"
 )
 
-// fell is LastFall of all readings of a batch, of which v holds the newest. A
-// correction costs more than everything else a row needs, and most readings lie
-// clearly inside or outside of a point: those are only estimated.
-func fell(v journal.View, book *journal.Book) (at time.Time, ok bool) {
-	if book == nil {
-		book = journal.NewBook(nil)
-	}
-	w := walk{view: v, book: book, last: v.Last(), estimate: estimateFrom(v.Last(), book)}
-	at, ok, certain := w.back(v.Record.Readings)
+// fell is LastFall of all readings of a batch, of which the view holds the newest.
+func (w *walk) fell() (at time.Time, ok bool) {
+	at, ok, certain := w.back(w.view.Record.Readings)
 	if !certain {
-		all := journal.Derive(v.Record, book)
+		all := journal.Derive(w.view.Record, w.book)
 		at, _, ok = LastFall(all.Counting())
 	}
 	return at, ok
 }
 
-// walk goes back from the last reading.
+// walk goes through the readings of a batch from the last one. A correction costs
+// more than everything else a row needs, and most readings lie clearly on one side
+// of what is asked: those are only estimated.
 type walk struct {
 	view     journal.View
 	book     *journal.Book
 	last     *journal.Value
 	estimate *estimate // nil when everything has to be corrected
+}
+
+// newWalk walks from the last reading of v, which has one.
+func newWalk(v journal.View, book *journal.Book) *walk {
+	if book == nil {
+		book = journal.NewBook(nil)
+	}
+	return &walk{view: v, book: book, last: v.Last(), estimate: estimateFrom(v.Last(), book)}
 }
 
 // point is the gravity of one reading.

@@ -2,6 +2,7 @@ package selfcheck
 
 import (
 	"gylebook/attenuation"
+	"gylebook/attenuation/control"
 	"gylebook/gravity"
 	"gylebook/gravity/method"
 	"gylebook/tempcorr"
@@ -47,6 +48,7 @@ func (r Relations) Infos() []method.Info {
 		r.Fits.Infos(), r.Scales.Infos(), r.Refractions.Infos(), gravity.FormulaInfos,
 		r.Corrections.Infos(), r.RefractometerCorrections.Infos(), tempcorr.FormulaInfos,
 		r.ABV.Infos(), r.Refractometer.Infos(), attenuation.FormulaInfos,
+		control.FormulaInfos, control.Tests.Infos(),
 	} {
 		infos = append(infos, more...)
 	}

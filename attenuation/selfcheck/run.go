@@ -15,6 +15,7 @@ var checks = map[string]func(Relations, *tally){
 	"extract_g_per_l_2020":           extractPerLitre,
 	"hydrometer_temp_bigelow1923_t8": bigelow,
 	"hydrometer_temp_lyons1992":      lyons,
+	"individuals_chart":              individualsChart,
 	"must_oiv_as2_02_t2":             must,
 	"refractometer_temp_crc":         refractometerTable("refractometer-crc"),
 	"refractometer_temp_oiv":         refractometerTable("refractometer-oiv"),

@@ -21,7 +21,7 @@ func (b *bench) abvCommand() *cli.Command {
 			&cli.StringFlag{Name: "method", Usage: "`ID` method of the answer: " + ids(attenuation.ABVMethods)},
 			&cli.StringFlag{Name: "rule", Usage: "`RULE` for the declared figure: " + ruleIDs()},
 			&cli.StringFlag{Name: "reading-u", Usage: "`HALF-WIDTH` of both readings, in SG, rectangular; half the last place typed unless told"},
-		}, pairFlags()...),
+		}, append(pairFlags(), rowsFlags("og", "pg")...)...),
 	}, `gylebook abv 1.048 1.010
 		gylebook abv 12P 2.6P --method densimetric
 		gylebook abv 1.055 1.016 --rule eu-label --json`, b.abv)
@@ -58,6 +58,9 @@ func (b *bench) abv(c *cli.Context) error {
 	rule, err := attenuation.FindRule(c.String("rule"))
 	if err != nil {
 		return err
+	}
+	if c.IsSet("rows") {
+		return b.abvRows(c, m, rule)
 	}
 	var done []strength
 	refused := b.pairs(c, func(p pair) error {

@@ -22,6 +22,7 @@ var rooms = []room{
 	{path: "gravity/asread", rank: 2},
 	{path: "tempcorr", rank: 3},
 	{path: "attenuation", rank: 4},
+	{path: "attenuation/control", rank: 4},
 	{path: "attenuation/selfcheck", rank: 5},
 	{path: "attenuation/journal", rank: 5},
 	{path: "attenuation/journal/sqlstore", rank: 6, only: []string{"cmd/gylebook"}},
@@ -29,7 +30,10 @@ var rooms = []room{
 	{path: "attenuation/journal/demo", rank: 6},
 	{path: "attenuation/journal/storetest", rank: 6, only: []string{}}, // for tests alone
 	{path: "attenuation/season", rank: 6},
+	{path: "attenuation/volume", rank: 5},
+	{path: "attenuation/cause", rank: 7},
 	{path: "attenuation/curve", rank: 5},
+	{path: "attenuation/outlook", rank: 7},
 	{path: "tables", rank: 0, only: []string{"cmd/gylebook"}}, // neutral rows in, so no room of ours below it
 	{path: "tables/dialect", rank: 0},                         // the same for what comes in
 	{path: "cmd/backtest", rank: 9},
@@ -47,7 +51,7 @@ var fences = []fence{
 	{of: "github.com/olekukonko/tablewriter", within: []string{"tables"}},
 	{of: "modernc.org/sqlite", within: []string{"attenuation/journal/sqlstore"}},
 	{of: "os", outside: formulas, except: []string{"attenuation/journal/sqlstore"}, testsFree: true}, // os/exec with it
-	{of: "time", outside: formulas, except: []string{"attenuation/journal", "attenuation/season"}, testsFree: true},
+	{of: "time", outside: formulas, except: []string{"attenuation/journal", "attenuation/season", "attenuation/cause", "attenuation/outlook"}, testsFree: true},
 	{of: "database/sql", outside: formulas, except: []string{"attenuation/journal/sqlstore"}, testsFree: true},
 	{of: "net", outside: formulas, testsFree: true},
 }

@@ -20,7 +20,7 @@ func (b *bench) attenuationCommand() *cli.Command {
 			With --limit the distance to the end of a forced fermentation of the same wort, and the carbon dioxide still to come.`,
 		Flags: append([]cli.Flag{
 			&cli.StringFlag{Name: "limit", Usage: "`AE` gravity that a forced fermentation ended at"},
-		}, pairFlags()...),
+		}, append(pairFlags(), rowsFlags("og", "pg")...)...),
 	}, `gylebook attenuation 1.048 1.010
 		gylebook attenuation 12P 2.6P --limit 2.0P
 		gylebook attenuation 1.048 1.010 --csv`, b.attenuation)
@@ -36,6 +36,9 @@ type attenuated struct {
 }
 
 func (b *bench) attenuation(c *cli.Context) error {
+	if c.IsSet("rows") {
+		return b.attenuationRows(c)
+	}
 	var done []attenuated
 	refused := b.pairs(c, func(p pair) error {
 		one := attenuated{pair: p}
@@ -102,23 +105,27 @@ func (one attenuated) difference() *float64 {
 	return &d
 }
 
+func (one attenuated) record(columns []string) tables.Record {
+	a := one.a
+	values := []any{
+		float64(a.OE), float64(a.AE), float64(a.RE), a.Apparent, a.ApparentPoints, a.Real, a.RDF,
+		float64(a.ABW), float64(a.ABV), a.EnergyKcal100mL, float64(a.ResidualGPL), number(one.difference()), neutral(one.notesOf()),
+		one.og.Input, one.pg.Input,
+	}
+	if one.void() {
+		// All but the two extracts as read.
+		for i := 2; i < 12; i++ {
+			values[i] = nil
+		}
+	}
+	return record(columns, values)
+}
+
 func (b *bench) attenuationSheet(done []attenuated) sheet {
 	columns := b.lineFields(attenuationColumns, "original_input", "present_input")
 	s := sheet{name: "attenuation", columns: columns}
 	for _, one := range done {
-		a := one.a
-		values := []any{
-			float64(a.OE), float64(a.AE), float64(a.RE), a.Apparent, a.ApparentPoints, a.Real, a.RDF,
-			float64(a.ABW), float64(a.ABV), a.EnergyKcal100mL, float64(a.ResidualGPL), number(one.difference()), neutral(one.notesOf()),
-			one.og.Input, one.pg.Input,
-		}
-		if one.void() {
-			// All but the two extracts as read.
-			for i := 2; i < 12; i++ {
-				values[i] = nil
-			}
-		}
-		s.records = append(s.records, record(columns, values))
+		s.records = append(s.records, one.record(columns))
 		if !one.void() {
 			s.explain = append(s.explain, attenuation.ExplainAttenuation(one.g, one.a)...)
 		}

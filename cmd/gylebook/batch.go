@@ -1,7 +1,10 @@
 package main
 
 import (
+	"context"
 	"errors"
+	"strings"
+	"time"
 
 	"github.com/urfave/cli/v2"
 
@@ -14,10 +17,11 @@ func (b *bench) batchCommand() *cli.Command {
 		`gylebook batch open B26-014 --vessel T4 --product "Lane Bitter" --og 1.048
 		gylebook batch og B26-014 1.0485 20
 		gylebook batch limit B26-014 1.009
+		gylebook batch volume B26-014 100L
 		gylebook batch list
 		gylebook batch show B26-014
 		gylebook batch close B26-014`,
-		b.batchOpen(), b.batchList(), b.batchShow(), b.batchOG(), b.batchLimit(), b.batchClose(),
+		b.batchOpen(), b.batchList(), b.batchShow(), b.batchOG(), b.batchLimit(), b.batchVolume(), b.batchClose(),
 	)
 }
 
@@ -91,7 +95,7 @@ func (b *bench) batchOf(c *cli.Context) (journal.Batch, error) {
 func (b *bench) openBatch(c *cli.Context, s journal.Store, body journal.Batch) error {
 	bodies := []journal.Body{body}
 	if text := c.String("og"); text != "" {
-		og, err := b.ogOf(c, s, text, c.String("og-temp"))
+		og, err := b.ogOf(c, s, text, c.String("og-temp"), body.Opened)
 		if err != nil {
 			return err
 		}
@@ -99,13 +103,17 @@ func (b *bench) openBatch(c *cli.Context, s journal.Store, body journal.Batch) e
 		bodies = append(bodies, og)
 	}
 	entries, err := b.commit(c.Context, s, func(r journal.Reader) ([]journal.Body, error) {
-		open, err := r.Open(c.Context)
+		open, err := r.OpenLast(c.Context, 0)
 		if err != nil {
 			return nil, err
 		}
-		if rec := occupant(open, body.Vessel); rec != nil {
-			return nil, dataError("gylebook batch close "+rec.Batch.ID+", or gylebook event "+rec.Batch.ID+" move --to VESSEL",
-				"vessel %s holds %s", body.Vessel, rec.Batch.ID)
+		if err := namesFree(open, body.ID, body.Vessel); err != nil {
+			return nil, err
+		}
+		if body.Parent != "" {
+			if bodies[0], err = parented(c.Context, r, open, body); err != nil {
+				return nil, err
+			}
 		}
 		return bodies, nil
 	})
@@ -118,14 +126,31 @@ func (b *bench) openBatch(c *cli.Context, s journal.Store, body journal.Batch) e
 	return b.showBatch(c.Context, s, "batch-open", entries[0], body.ID, "opened "+body.ID)
 }
 
-// ogOf reads one original gravity; without a temperature it is already corrected
+// parented finds the parent of a batch among those of the journal.
+func parented(ctx context.Context, r journal.Reader, open []*journal.Record, body journal.Batch) (journal.Batch, error) {
+	parent, err := batchBy(ctx, r, body.Parent)
+	if err != nil {
+		hint := "one older than the journal goes in --note"
+		if near := nearestNames(ctx, r, open, body.Parent); len(near) > 0 {
+			hint = "nearest: " + strings.Join(near, ", ") + "; " + hint
+		}
+		return body, dataError(hint, "--parent: no batch %.40q", body.Parent)
+	}
+	body.Parent = parent.Batch.ID
+	return body, nil
+}
+
+// ogOf reads one original gravity at a time; without a temperature it is already corrected
 // and no instrument's.
-func (b *bench) ogOf(c *cli.Context, r journal.Reader, text, temp string) (journal.OG, error) {
+func (b *bench) ogOf(c *cli.Context, r journal.Reader, text, temp string, at time.Time) (journal.OG, error) {
 	var og journal.OG
 	var rec *journal.InstrumentRecord
 	var err error
 	if temp != "" || c.String("instrument") != "" {
-		if rec, err = b.instrumentFor(c.Context, r, c.String("instrument")); err != nil {
+		if rec, err = b.instrumentFor(c.Context, r, c.String("instrument"), ""); err != nil {
+			return og, err
+		}
+		if err = inUseAt(rec, at); err != nil {
 			return og, err
 		}
 	}

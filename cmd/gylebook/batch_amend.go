@@ -17,7 +17,7 @@ func (b *bench) batchOG() *cli.Command {
 		Description: "Without a temperature it is one already corrected.",
 		Flags: []cli.Flag{
 			&cli.StringFlag{Name: "instrument", Usage: "`ID` with which it was read"},
-			&cli.StringFlag{Name: "at", Usage: "`TIME` now unless given"},
+			&cli.StringFlag{Name: "at", Aliases: orTaken, Usage: "`TIME` now unless given"},
 		},
 	}, `gylebook batch og B26-014 1.0485 20
 		gylebook batch og T4 12.0P`,
@@ -30,10 +30,10 @@ func (b *bench) batchOG() *cli.Command {
 			if len(args) == 3 {
 				temp = args[2]
 			}
-			return b.amend(c, args[0], "original gravity", func(s journal.Store, id string, at time.Time) (journal.Body, error) {
-				og, err := b.ogOf(c, s, args[1], temp)
-				og.Batch, og.At = id, at
-				return og, err
+			return b.amend(c, args[0], func(s journal.Store, rec *journal.Record, at time.Time) (journal.Body, string, error) {
+				og, err := b.ogOf(c, s, args[1], temp, at)
+				og.Batch, og.At = rec.Batch.ID, at
+				return og, "original gravity", err
 			})
 		})
 }
@@ -42,7 +42,7 @@ func (b *bench) batchLimit() *cli.Command {
 	return b.sub("batch", &cli.Command{
 		Name: "limit", Usage: "enter the limit of attenuation, by a forced ferment", ArgsUsage: "BATCH GRAVITY",
 		Description: "The gravity, already corrected, at which a forced ferment of the same wort stood still.",
-		Flags:       []cli.Flag{&cli.StringFlag{Name: "at", Usage: "`TIME` now unless given"}},
+		Flags:       []cli.Flag{&cli.StringFlag{Name: "at", Aliases: orTaken, Usage: "`TIME` now unless given"}},
 	}, `gylebook batch limit B26-014 1.009
 		gylebook batch limit T4 2.0P`,
 		func(c *cli.Context) error {
@@ -50,9 +50,8 @@ func (b *bench) batchLimit() *cli.Command {
 			if len(args) != 2 {
 				return wanted(c, "a batch and a gravity")
 			}
-			return b.amend(c, args[0], "limit of attenuation", func(_ journal.Store, id string, at time.Time) (journal.Body, error) {
-				typed, err := b.readWith(nil, args[1])
-				return journal.Limit{Batch: id, At: at, Gravity: typed}, err
+			return b.amend(c, args[0], func(s journal.Store, rec *journal.Record, at time.Time) (journal.Body, string, error) {
+				return b.forcedLimit(c.Context, s, rec, at, args[1])
 			})
 		})
 }
@@ -61,7 +60,7 @@ func (b *bench) batchClose() *cli.Command {
 	return b.sub("batch", &cli.Command{
 		Name: "close", Usage: "end a batch; its vessel is free again", ArgsUsage: "BATCH",
 		Flags: []cli.Flag{
-			&cli.StringFlag{Name: "at", Usage: "`TIME` now unless given"},
+			&cli.StringFlag{Name: "at", Aliases: orTaken, Usage: "`TIME` now unless given"},
 			&cli.StringFlag{Name: "note", Usage: "`TEXT` why, where to"},
 		},
 	}, `gylebook batch close B26-014 --note "racked to cask"`,
@@ -69,14 +68,38 @@ func (b *bench) batchClose() *cli.Command {
 			if c.Args().Len() != 1 {
 				return wanted(c, "one batch")
 			}
-			return b.amend(c, c.Args().First(), "closed", func(_ journal.Store, id string, at time.Time) (journal.Body, error) {
-				return journal.Close{Batch: id, At: at, Note: c.String("note")}, nil
+			return b.amend(c, c.Args().First(), func(_ journal.Store, rec *journal.Record, at time.Time) (journal.Body, string, error) {
+				id := rec.Batch.ID
+				if last := lastOf(rec); last.After(at) {
+					return nil, "", dataError("close it after that, or void what was not of this batch",
+						"closing at %s, wanted a time after the last entry of %s, %s", minuteText(at), id, minuteText(last))
+				}
+				return journal.Close{Batch: id, At: at, Note: c.String("note")}, "closed", nil
 			})
 		})
 }
 
+// lastOf is the time of the last reading or event that counts.
+func lastOf(rec *journal.Record) time.Time {
+	var last time.Time
+	for _, r := range rec.Readings {
+		if !r.Void && r.Body.TakenAt.After(last) {
+			last = r.Body.TakenAt
+		}
+	}
+	for _, e := range rec.Events {
+		if !e.Void && e.Body.At.After(last) {
+			last = e.Body.At
+		}
+	}
+	return last
+}
+
+// orTaken is what readings call the time of what was done.
+var orTaken = []string{"taken"}
+
 // amend adds one entry to a batch and shows how it stands after it.
-func (b *bench) amend(c *cli.Context, name, what string, body func(s journal.Store, id string, at time.Time) (journal.Body, error)) error {
+func (b *bench) amend(c *cli.Context, name string, body func(s journal.Store, rec *journal.Record, at time.Time) (journal.Body, string, error)) error {
 	at, err := b.past(c, "at")
 	if err != nil {
 		return err
@@ -86,7 +109,7 @@ func (b *bench) amend(c *cli.Context, name, what string, body func(s journal.Sto
 		if err != nil {
 			return err
 		}
-		one, err := body(s, rec.Batch.ID, at)
+		one, what, err := body(s, rec, at)
 		if err != nil {
 			return err
 		}

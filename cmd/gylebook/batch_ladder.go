@@ -2,6 +2,7 @@ package main
 
 import (
 	"fmt"
+	"math"
 	"slices"
 	"strings"
 
@@ -15,10 +16,12 @@ import (
 func (b *bench) showLadder(v journal.View) *tables.Ladder {
 	rec := v.Record
 	state := "open"
-	if rec.Closed != nil {
+	if rec.Void {
+		state = "void: " + rec.VoidReason
+	} else if rec.Closed != nil {
 		state = "closed " + day(rec.Closed.Body.At)
 	} else if d, ok := v.Days(b.set.now); ok && d >= 0 {
-		state += ", day " + fixed(d, 1)
+		state += ", day " + fixed(math.Floor(d), 0)
 	}
 	l := &tables.Ladder{Answer: []string{strings.TrimSpace(v.Vessel() + " " + rec.Batch.ID + " " + rec.Batch.Product), state}}
 	l.Rungs = append(factRungs(v), presentRungs(v)...)
@@ -45,8 +48,8 @@ func factRungs(v journal.View) []tables.Rung {
 	if b.Parent != "" {
 		last.Remark = strings.TrimPrefix(last.Remark+", cropped from "+b.Parent, ", ")
 	}
-	if b.Volume != "" {
-		rungs = append(rungs, tables.Rung{Name: "volume", Value: b.Volume, Remark: "L at 20 °C"})
+	if litres := v.Record.Volume(); litres != "" {
+		rungs = append(rungs, tables.Rung{Name: "volume", Value: litres, Remark: "L at 20 °C"})
 	}
 	og := tables.Rung{Name: "original", Value: none, Remark: "original gravity not known"}
 	if v.OG != nil {

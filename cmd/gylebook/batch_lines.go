@@ -24,11 +24,25 @@ func (b *bench) lineTable(v journal.View) tables.Table {
 		{Head: "app. %", Align: tables.Right},
 		{Head: "by"},
 		{Head: ""},
-	}, Foot: []string{"24 h: fall in points; app. %: apparent attenuation on extract; instrument error not included"}}
+	}, Foot: []string{"24 h: fall in points; app. %: apparent attenuation on extract; " + coversAll(v)}}
 	for _, l := range lines(v) {
 		t.Rows = append(t.Rows, append(l.row(), l.remark))
 	}
 	return b.hanging(t)
+}
+
+// coversAll says whether the error of their instruments is in the readings that count.
+func coversAll(v journal.View) string {
+	with, without := false, false
+	for k := range v.Values {
+		if one := &v.Values[k]; one.Counts() {
+			with, without = with || one.Result.Budget.Record, without || !one.Result.Budget.Record
+		}
+	}
+	if with && without {
+		return "instrument error included where an instrument is named"
+	}
+	return covers(with)
 }
 
 // hanging carries the last column over to further rows, so that the table fits.
@@ -86,6 +100,14 @@ func lines(v journal.View) []line {
 	}
 	for _, l := range v.Record.Limits {
 		deed(l.Body.At, l.Number, l.By, l.Void, l.VoidReason, "limit "+l.Body.Gravity.Text)
+	}
+	for _, x := range v.Record.Volumes {
+		deed(x.Body.At, x.Number, x.By, x.Void, x.VoidReason, "volume "+x.Body.Volume+" L")
+	}
+	for _, e := range v.Record.Given {
+		if e.Body.Batch != v.Record.Batch.ID {
+			deed(e.Body.At, e.Number, e.By, e.Void, e.VoidReason, givenText(e.Body))
+		}
 	}
 	for _, e := range v.Record.Events {
 		deed(e.Body.At, e.Number, e.By, e.Void, e.VoidReason, eventText(e.Body))

@@ -17,6 +17,7 @@ func (b *bench) batchList() *cli.Command {
 		Flags: []cli.Flag{
 			&cli.BoolFlag{Name: "open", Usage: "those that are open"},
 			&cli.BoolFlag{Name: "closed", Usage: "those that are closed"},
+			&cli.BoolFlag{Name: "all", Usage: "void ones too"},
 			&cli.StringFlag{Name: "product", Usage: "`NAME` of the product"},
 			&cli.StringFlag{Name: "yeast", Usage: "`NAME` of the yeast"},
 			&cli.IntFlag{Name: "year", Usage: "`YEAR` of pitching"},
@@ -29,7 +30,7 @@ func (b *bench) batchList() *cli.Command {
 			}
 			f := journal.Filter{
 				Product: c.String("product"), Yeast: c.String("yeast"), Year: c.Int("year"),
-				Open: c.Bool("open"), Closed: c.Bool("closed"),
+				Open: c.Bool("open"), Closed: c.Bool("closed"), Void: c.Bool("all"),
 			}
 			if f.Open && f.Closed {
 				return usageError("", "--open and --closed exclude each other")
@@ -65,9 +66,12 @@ func (b *bench) listBatches(c *cli.Context, s journal.Store, f journal.Filter) e
 	if err := c.Context.Err(); err != nil {
 		return err
 	}
-	if len(t.Rows) == 0 {
+	switch {
+	case len(t.Rows) == 0:
 		b.note("note: no such batch")
-	} else {
+	case b.narrow():
+		sh.ladder = &tables.Ladder{Lines: narrowBatches(t.Rows, b.set.width)}
+	default:
 		sh.tables = []tables.Table{t}
 	}
 	return b.print(sh)
@@ -85,7 +89,10 @@ func batchRow(v journal.View) []string {
 			apparent = fixed(one.Attenuation.Apparent, 1)
 		}
 	}
-	if rec.Closed != nil {
+	switch {
+	case rec.Void:
+		state = "void"
+	case rec.Closed != nil:
 		state = "closed"
 	}
 	return []string{rec.Batch.ID, v.Vessel(), rec.Batch.Product, day(v.Pitched), og, last, apparent, state}
@@ -128,7 +135,13 @@ func afterSheet(name string, e journal.Entry, v journal.View, text string) sheet
 	if line := originalLine(v); line != "" {
 		answer = append(answer, line)
 	}
+	answer[len(answer)-1] = numberedLine(answer[len(answer)-1], e)
 	return sheet{name: name, records: []tables.Record{rec}, ladder: &tables.Ladder{Answer: answer}}
+}
+
+// numberedLine ends a line about an entry with its number, which void takes.
+func numberedLine(line string, e journal.Entry) string {
+	return fmt.Sprintf("%s   #%d", line, e.Number)
 }
 
 // originalLine is the original gravity in words, with what was added.

@@ -41,13 +41,14 @@ func batchFigures(v journal.View) tables.Record {
 		{Name: "yeast", Value: nilIfEmpty(b.Yeast)},
 		{Name: "yeast_generation", Value: nilIfZero(b.Generation)},
 		{Name: "parent_batch_id", Value: nilIfEmpty(b.Parent)},
-		{Name: "batch_volume_l", Value: numberOf(b.Volume)},
+		{Name: "batch_volume_l", Value: numberOf(v.Record.Volume())},
 		{Name: "opened_at", Value: stampText(b.Opened)},
 		{Name: "pitched_at", Value: stampText(v.Pitched)},
 		{Name: "closed_at", Value: closed},
 		{Name: "open", Value: v.Open()},
 	}
-	return append(append(r, originalFigures(v)...), presentFigures(v)...)
+	r = append(append(r, originalFigures(v)...), presentFigures(v)...)
+	return append(r, tables.Field{Name: "void", Value: v.Record.Void}, tables.Field{Name: "void_reason", Value: nilIfEmpty(v.Record.VoidReason)})
 }
 
 // originalFigures are those of the original gravity: as read, and effective after
@@ -100,9 +101,13 @@ func presentFigures(v journal.View) tables.Record {
 		{Name: "fall_24h_points", Value: fall},
 	}
 	r = append(r, attenuationFields(a, alcohol)...)
+	var by any
+	if alcohol != nil {
+		by = attenuation.ABVMethods.Default().ID
+	}
 	return append(
 		r,
-		tables.Field{Name: "abv_method", Value: attenuation.ABVMethods.Default().ID},
+		tables.Field{Name: "abv_method", Value: by},
 		tables.Field{Name: "limit_difference_pct", Value: limitDifference(v, a)},
 		tables.Field{Name: "why", Value: why},
 	)

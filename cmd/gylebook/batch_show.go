@@ -1,6 +1,8 @@
 package main
 
 import (
+	"context"
+
 	"github.com/urfave/cli/v2"
 
 	"gylebook/attenuation/journal"
@@ -20,7 +22,7 @@ func (b *bench) batchShow() *cli.Command {
 				return wanted(c, "one batch")
 			}
 			return b.withJournal(c.Context, func(s journal.Store) error {
-				rec, err := batchBy(c.Context, s, c.Args().First())
+				rec, err := shownBy(c.Context, s, c.Args().First())
 				if err != nil {
 					return err
 				}
@@ -31,6 +33,17 @@ func (b *bench) batchShow() *cli.Command {
 				return b.print(b.showSheet(journal.Derive(rec, book)))
 			})
 		})
+}
+
+// shownBy is batchBy that finds void batches too.
+func shownBy(ctx context.Context, r journal.Reader, name string) (*journal.Record, error) {
+	rec, err := batchBy(ctx, r, name)
+	if err != nil {
+		if gone := voidBatch(ctx, r, name); gone != nil {
+			return gone, nil
+		}
+	}
+	return rec, err
 }
 
 func (b *bench) showSheet(v journal.View) sheet {
@@ -57,7 +70,11 @@ func (b *bench) showSheet(v journal.View) sheet {
 		{Name: "events", Value: eventRecords(v)},
 	}...)
 	s.records = []tables.Record{rec}
-	if t := b.lineTable(v); len(t.Rows) > 0 {
+	switch t := b.lineTable(v); {
+	case len(t.Rows) == 0:
+	case b.narrow():
+		s.more = []*tables.Ladder{{Lines: narrowEntries(v)}}
+	default:
 		s.tables = []tables.Table{t}
 	}
 	if v.Limit != nil {

@@ -45,18 +45,22 @@ func otherExtract(ctx context.Context, r journal.Reader, list []*journal.Instrum
 // forever is after every event.
 var forever = time.Date(9999, 12, 31, 0, 0, 0, 0, time.UTC)
 
-// batchBy finds a batch by its id, or an open one by its vessel. An unknown one is
-// refused with the three names that are most alike.
+// batchBy finds a batch by its id, or an open one by its vessel; capitals do not count
+// where nothing else has the name. An unknown one is refused with the three names that
+// are most alike.
 func batchBy(ctx context.Context, r journal.Reader, name string) (*journal.Record, error) {
 	rec, err := r.Batch(ctx, name)
-	if err == nil || !errors.Is(err, journal.ErrNotFound) {
+	if err == nil && rec.Closed == nil || err != nil && !errors.Is(err, journal.ErrNotFound) {
 		return rec, err
 	}
-	open, err := r.Open(ctx)
+	open, err := r.OpenLast(ctx, 0)
 	if err != nil {
 		return nil, err
 	}
-	return byVessel(ctx, r, open, name)
+	if rec, err = openBy(ctx, r, open, name); err != nil {
+		return nil, err
+	}
+	return r.Batch(ctx, rec.Batch.ID)
 }
 
 // openBy is batchBy with the open batches at hand; a closed one is found too.
@@ -66,21 +70,19 @@ func openBy(ctx context.Context, r journal.Reader, open []*journal.Record, name 
 			return rec, nil
 		}
 	}
-	rec, err := byVessel(ctx, r, open, name)
-	if err == nil {
-		return rec, nil
+	if k := slices.IndexFunc(open, func(rec *journal.Record) bool { return vesselOf(rec) == name }); k >= 0 && name != "" {
+		return open[k], nil
 	}
-	if closed, errClosed := r.Batch(ctx, name); errClosed == nil {
+	if closed, err := r.Batch(ctx, name); err == nil {
 		return closed, nil
 	}
-	return nil, err
+	return looselyBy(ctx, r, open, name)
 }
 
-// byVessel finds an open batch by its vessel; capitals do not count unless two
+// byVessel finds a batch of these by its vessel; capitals do not count unless two
 // vessels differ by them alone.
 func byVessel(ctx context.Context, r journal.Reader, open []*journal.Record, name string) (*journal.Record, error) {
 	var alike []*journal.Record
-	var names []string
 	for _, rec := range open {
 		vessel := vesselOf(rec)
 		if vessel != "" && vessel == name {
@@ -89,33 +91,12 @@ func byVessel(ctx context.Context, r journal.Reader, open []*journal.Record, nam
 		if strings.EqualFold(vessel, name) {
 			alike = append(alike, rec)
 		}
-		if vessel != "" {
-			names = append(names, vessel)
-		}
 	}
 	if len(alike) == 1 {
 		return alike[0], nil
 	}
-	ids, err := r.BatchIDs(ctx)
-	if err != nil {
-		return nil, err
-	}
-	hint := "gylebook batch open opens one"
-	if near := journal.Nearest(name, append(names, ids...), 3); len(near) > 0 {
-		hint = "nearest: " + strings.Join(near, ", ")
-	}
-	return nil, dataError(hint, "no open vessel and no batch %.40q", name)
+	return nil, unknownName(ctx, r, open, name)
 }
 
 // vesselOf is where a batch is, after its moves.
 func vesselOf(rec *journal.Record) string { return journal.View{Record: rec}.Vessel() }
-
-// occupant is the open batch in a vessel, nil when it is empty.
-func occupant(open []*journal.Record, vessel string) *journal.Record {
-	for _, rec := range open {
-		if vessel != "" && strings.EqualFold(vesselOf(rec), vessel) {
-			return rec
-		}
-	}
-	return nil
-}

@@ -4,8 +4,10 @@ import (
 	"context"
 	"slices"
 	"strings"
+	"time"
 
 	"gylebook/attenuation/journal"
+	"gylebook/gravity/method"
 )
 
 // instrumentBy finds an instrument that is registered.
@@ -33,8 +35,9 @@ func instrumentBy(ctx context.Context, r journal.Reader, id string) (*journal.In
 const noInstrument = "none"
 
 // instrumentFor chooses the instrument of a reading: the one named, else the only
-// hydrometer in use, else the last of this operator, else none (nil).
-func (b *bench) instrumentFor(ctx context.Context, r journal.Reader, name string) (*journal.InstrumentRecord, error) {
+// hydrometer in use, else the last of this operator, else the one that the batch or
+// vessel was read with last, else none (nil), which is said. batch may be "".
+func (b *bench) instrumentFor(ctx context.Context, r journal.Reader, name, batch string) (*journal.InstrumentRecord, error) {
 	if name == noInstrument {
 		return nil, nil
 	}
@@ -55,13 +58,53 @@ func (b *bench) instrumentFor(ctx context.Context, r journal.Reader, name string
 		return use[0], nil
 	}
 	last, err := r.LastInstrumentBy(ctx, b.by())
-	if err != nil || last == "" {
+	if err == nil && last == "" && len(use) > 1 && batch != "" {
+		last, err = lastInstrumentOf(ctx, r, batch)
+	}
+	if err != nil {
 		return nil, err
 	}
 	if k := slices.IndexFunc(use, func(rec *journal.InstrumentRecord) bool { return rec.Instrument.ID == last }); k >= 0 {
 		return use[k], nil
 	}
+	if len(use) > 1 {
+		ids := make([]string, len(use))
+		for k, rec := range use {
+			ids[k] = rec.Instrument.ID
+		}
+		b.notes = append(b.notes, method.Note{Code: method.Assumed, Text: "read with no instrument of the journal; in use are " +
+			strings.Join(ids, ", ") + ": name one with --instrument"})
+	}
 	return nil, nil
+}
+
+// lastInstrumentOf is the instrument of the newest reading that counts of an open
+// batch or vessel; "" when there is none. A name that is not open is left to others.
+func lastInstrumentOf(ctx context.Context, r journal.Reader, name string) (string, error) {
+	open, err := r.OpenLast(ctx, 1)
+	if err != nil {
+		return "", err
+	}
+	for _, rec := range open {
+		if !strings.EqualFold(rec.Batch.ID, name) && !strings.EqualFold(vesselOf(rec), name) {
+			continue
+		}
+		for k := len(rec.Readings) - 1; k >= 0; k-- {
+			if one := rec.Readings[k]; !one.Void {
+				return one.Body.Instrument, nil
+			}
+		}
+	}
+	return "", nil
+}
+
+// inUseAt refuses an instrument that was out of use at a time.
+func inUseAt(rec *journal.InstrumentRecord, at time.Time) error {
+	if rec == nil || rec.Retired == nil || at.Before(rec.Retired.Body.At) {
+		return nil
+	}
+	return dataError("name another with --instrument; a reading from before that has its own --at",
+		"instrument %s was taken out of use on %s: %s", rec.Instrument.ID, day(rec.Retired.Body.At), rec.Retired.Body.Reason)
 }
 
 // idOf is the id of an instrument that may be none.

@@ -169,7 +169,7 @@ func (b *bench) completeOpenCommand() *cli.Command {
 		Name: completeOpen, Hidden: true, Usage: "open vessels and batches, for the completion scripts",
 	}, "gylebook "+completeOpen, func(c *cli.Context) error {
 		return b.withJournal(c.Context, func(s journal.Store) error {
-			open, err := s.Open(c.Context)
+			open, err := s.OpenLast(c.Context, 0)
 			if err != nil {
 				return err
 			}

@@ -21,7 +21,7 @@ func (b *bench) convertCommand() *cli.Command {
 		Flags: append([]cli.Flag{
 			&cli.StringFlag{Name: "to", Usage: "`LIST` scales to show: " + scaleIDs() + ", long"},
 			&cli.StringFlag{Name: "modulus", Value: "145", Usage: "`M` modulus of the Baumé scale: 145 on SG 20/20, or 144.3 on SG 15/4"},
-		}, fitFlags()...),
+		}, append(fitFlags(), rowsFlags("reading")...)...),
 	}, `gylebook convert 1.048
 		gylebook convert 12P 90Oe 1046kg/m3
 		gylebook convert 1.048 --to plato,gpl
@@ -94,6 +94,9 @@ func convertOne(conv gravity.Converter, pair gravity.Pair, typed asread.Reading)
 }
 
 func (b *bench) convert(c *cli.Context) error {
+	if c.IsSet("rows") {
+		return b.convertRows(c)
+	}
 	if c.Args().Len() == 0 {
 		return missing(c.Command, "a value")
 	}
@@ -183,24 +186,33 @@ func scaleIDs() string {
 	return strings.Join(all, ", ")
 }
 
-func convertSheet(conv gravity.Converter, pair gravity.Pair, show []column, done []converted) sheet {
-	s := sheet{name: "convert", columns: []string{"input", "read_as", "fit"}}
+// convertFields names the fields of a record.
+func convertFields(show []column) []string {
+	names := []string{"input", "read_as", "fit"}
 	for _, col := range show {
-		s.columns = append(s.columns, col.field)
+		names = append(names, col.field)
 		if col.id == "baume" {
-			s.columns = append(s.columns, "baume_modulus")
+			names = append(names, "baume_modulus")
 		}
 	}
-	s.columns = append(s.columns, "notes")
-	for _, one := range done {
-		values := []any{one.typed.Input, one.typed.ReadAs(), conv.Fit.ID}
-		for _, col := range show {
-			values = append(values, col.of(one.fig))
-			if col.id == "baume" {
-				values = append(values, float64(conv.Modulus))
-			}
+	return append(names, "notes")
+}
+
+func convertRecord(conv gravity.Converter, show []column, names []string, one converted) tables.Record {
+	values := []any{one.typed.Input, one.typed.ReadAs(), conv.Fit.ID}
+	for _, col := range show {
+		values = append(values, col.of(one.fig))
+		if col.id == "baume" {
+			values = append(values, float64(conv.Modulus))
 		}
-		s.records = append(s.records, record(s.columns, append(values, neutral(one.fig.Notes))))
+	}
+	return record(names, append(values, neutral(one.fig.Notes)))
+}
+
+func convertSheet(conv gravity.Converter, pair gravity.Pair, show []column, done []converted) sheet {
+	s := sheet{name: "convert", columns: convertFields(show)}
+	for _, one := range done {
+		s.records = append(s.records, convertRecord(conv, show, s.columns, one))
 		s.explain = append(s.explain, gravity.ExplainConversion(conv, one.typed.Scale, one.typed.Value, pair, one.fig)...)
 	}
 	switch {

@@ -21,7 +21,7 @@ func (b *bench) correctCommand() *cli.Command {
 		Description: `The instrument is glass, 20/20, read at the bottom of the meniscus unless told. With --og the
 			liquid is a fermenting one; without it a sucrose solution. "-" reads stdin, one reading a line; a line may
 			carry its own temperature. An OG is on the same basis as the reading.`,
-		Flags: []cli.Flag{
+		Flags: append([]cli.Flag{
 			&cli.StringFlag{Name: "temp", Usage: "`T` temperature of the sample: 28C, 68F"},
 			&cli.StringFlag{Name: "instrument", Usage: "`ID` of an instrument of the journal, as it is now"},
 			&cli.StringFlag{Name: "basis", Value: "20/20", Usage: "`PAIR` reference of the instrument: 20/20, 60/60F, 15/15, 17.5/17.5, 15/4, 20/4"},
@@ -29,12 +29,13 @@ func (b *bench) correctCommand() *cli.Command {
 			&cli.StringFlag{Name: "meniscus", Value: "bottom", Usage: "`PLACE` where it was read: bottom or top (the scale is meant for the bottom)"},
 			&cli.StringFlag{Name: "og", Usage: "`OG` original gravity of a liquid that ferments or has fermented"},
 			&cli.StringFlag{Name: "method", Usage: "`ID` correction: " + ids(tempcorr.Methods) + " (sucrose; fermenting with --og)"},
-		},
+		}, rowsFlags("reading", "temp")...),
 	}, `gylebook correct 1.050 --temp 28C
 		gylebook correct 1.012 --temp 30C --og 1.048
 		gylebook correct 12.1P --temp 68F --json
 		gylebook correct 1.050 --temp 22C --instrument H1
-		printf '1.050 28C\n1.048 25C\n' | gylebook correct -`, b.correct)
+		printf '1.050 28C\n1.048 25C\n' | gylebook correct -
+		gylebook correct --rows readings.csv --out corrected.csv`, b.correct)
 }
 
 // reader is an instrument and what every observation with it shares.
@@ -46,6 +47,7 @@ type reader struct {
 	og       string // the original gravity as it was read
 	method   string
 	named    *named // nil when no instrument is named
+	plain    bool   // the uncertainty is not asked for
 }
 
 // corrected is one reading, typed and corrected.
@@ -58,6 +60,9 @@ type corrected struct {
 }
 
 func (b *bench) correct(c *cli.Context) error {
+	if c.IsSet("rows") {
+		return b.correctRows(c)
+	}
 	if c.Args().Len() == 0 {
 		return missing(c.Command, "a reading")
 	}
@@ -158,7 +163,7 @@ func (b *bench) correctOne(r reader, reading, temp string) (corrected, error) {
 	}
 	one.seen = tempcorr.Observation{
 		Reading: one.typed.Value, Step: one.typed.Step, T: one.temp.C,
-		ReadAt: r.meniscus, OE: r.oe, Method: r.method,
+		ReadAt: r.meniscus, OE: r.oe, Method: r.method, Plain: r.plain,
 	}
 	one.res, err = tempcorr.Correct(one.by, one.seen)
 	return one, err

@@ -7,33 +7,32 @@ import (
 	"github.com/urfave/cli/v2"
 
 	"gylebook/attenuation/journal"
-	"gylebook/gravity/asread"
 	"gylebook/gravity/method"
 )
 
 func (b *bench) eventCommand() *cli.Command {
 	return b.command(&cli.Command{
-		Name: "event", Usage: "what was done to a batch: additions, racking, moves", ArgsUsage: "BATCH KIND",
+		Name: "event", Usage: "what was done to a batch: additions, racking, moves", ArgsUsage: "BATCH KIND [AMOUNT] [GRAVITY]",
 		Description: "Kinds: " + strings.Join(journal.EventKinds, ", ") + `. Sugar (by mass), top-up, dilution, blend and fruit
-			change the original gravity that attenuation is reckoned from, by mass balance: give --mass or --volume, and
-			--gravity for what is neither water nor sugar. --volume of racking is what was lost.`,
+			change the original gravity that attenuation is reckoned from, by mass balance: give the amount, and the
+			gravity of what is neither water nor sugar; --mass unknown where nobody weighed it. --volume of racking is what was lost.`,
 		Flags: []cli.Flag{
 			&cli.StringFlag{Name: "mass", Usage: "`M` of what was added: 2kg, 500g"},
 			&cli.StringFlag{Name: "volume", Usage: "`V` of what was added or lost: 5L, 1hl"},
 			&cli.StringFlag{Name: "gravity", Usage: "`G` original gravity of what was added, corrected"},
 			&cli.StringFlag{Name: "from", Usage: "`BATCH` that was blended in"},
 			&cli.StringFlag{Name: "to", Usage: "`VESSEL` that it went to"},
-			&cli.StringFlag{Name: "at", Usage: "`TIME` now unless given"},
+			&cli.StringFlag{Name: "at", Aliases: orTaken, Usage: "`TIME` now unless given"},
 			&cli.StringFlag{Name: "note", Usage: "`TEXT` anything else"},
 		},
-	}, `gylebook event B26-014 sugar --mass 2kg
-		gylebook event T4 top-up --volume 20L --gravity 1.040
+	}, `gylebook event B26-014 sugar 2kg
+		gylebook event T4 top-up 20L 1.040
 		gylebook event T4 dry-hop --mass 500g --note "second charge"
 		gylebook event T4 move --to T7`, b.event)
 }
 
 func (b *bench) event(c *cli.Context) error {
-	if c.Args().Len() != 2 {
+	if c.Args().Len() < 2 {
 		return wanted(c, "a batch and what was done")
 	}
 	body, err := b.eventOf(c)
@@ -41,15 +40,8 @@ func (b *bench) event(c *cli.Context) error {
 		return err
 	}
 	return b.withJournal(c.Context, func(s journal.Store) error {
-		if body.From != "" {
-			from, err := batchBy(c.Context, s, body.From)
-			if err != nil {
-				return err
-			}
-			body.From = from.Batch.ID
-		}
 		entries, err := b.commit(c.Context, s, func(r journal.Reader) ([]journal.Body, error) {
-			open, err := r.Open(c.Context)
+			open, err := r.OpenLast(c.Context, 0)
 			if err != nil {
 				return nil, err
 			}
@@ -58,10 +50,19 @@ func (b *bench) event(c *cli.Context) error {
 				return nil, err
 			}
 			body.Batch = rec.Batch.ID
-			if in := occupant(open, body.Vessel); in != nil && in.Batch.ID != body.Batch {
-				return nil, dataError("gylebook batch close "+in.Batch.ID+" when it is empty", "vessel %s holds %s", body.Vessel, in.Batch.ID)
+			if body.From != "" {
+				from, err := batchBy(c.Context, r, body.From)
+				if err != nil {
+					return nil, err
+				}
+				body.From = from.Batch.ID
 			}
-			return []journal.Body{body}, nil
+			if body.Vessel != "" {
+				if err := namesFree(open, body.Batch, body.Vessel); err != nil {
+					return nil, err
+				}
+			}
+			return []journal.Body{body}, possibleEvent(c.Context, r, rec, body)
 		})
 		if err != nil {
 			return err
@@ -87,31 +88,7 @@ func (b *bench) eventOf(c *cli.Context) (journal.Event, error) {
 	case body.What == journal.Blend && body.From == "":
 		return body, usageError("add --from B26-010", "--from is missing: the batch that was blended in")
 	}
-	return body, b.amounts(&body, c.String("mass"), c.String("volume"), c.String("gravity"))
-}
-
-// amounts reads what was added.
-func (b *bench) amounts(body *journal.Event, mass, volume, gravity string) error {
-	if mass != "" {
-		m, err := asread.ParseMass(mass)
-		if err != nil {
-			return dataError(hintOf(err), "--mass: %v", err)
-		}
-		body.MassKg = m.Text
-	}
-	if volume != "" {
-		v, err := asread.ParseVolume(volume)
-		if err != nil {
-			return dataError(hintOf(err), "--volume: %v", err)
-		}
-		body.VolumeL = v.Text
-	}
-	if gravity == "" {
-		return nil
-	}
-	var err error
-	body.Gravity, err = b.readWith(nil, gravity)
-	return err
+	return body, b.amounts(&body, c.Args().Slice()[2:], c.String("mass"), c.String("volume"), c.String("gravity"))
 }
 
 // showEvent says what was done and what it makes of the original gravity.
@@ -125,8 +102,8 @@ func (b *bench) showEvent(c *cli.Context, s journal.Store, e journal.Entry, body
 		return err
 	}
 	v := journal.DeriveLast(rec, book, 2)
-	sh := afterSheet("event", e, v, body.Batch+" "+eventText(body))
-	sh.ladder.Answer = sh.ladder.Answer[:1]
+	sh := afterSheet("event", e, v, "")
+	sh.ladder.Answer = []string{body.Batch + " " + eventText(body)}
 	// After the event, whatever was read before it.
 	oe, sg, why := v.OEAt(forever)
 	sh.records[0] = set(set(sh.records[0], "effective_og_sg_20_20", known(sg)), "effective_og_extract_pct_mass", known(oe))
@@ -138,6 +115,8 @@ func (b *bench) showEvent(c *cli.Context, s journal.Store, e journal.Entry, body
 			sh.ladder.Answer = append(sh.ladder.Answer, effectiveLine(v))
 		}
 	}
+	last := len(sh.ladder.Answer) - 1
+	sh.ladder.Answer[last] = numberedLine(sh.ladder.Answer[last], e)
 	sh.notes = eventCautions(body.What)
 	return b.print(sh)
 }
@@ -151,28 +130,4 @@ func eventCautions(what string) []method.Note {
 		return []method.Note{cautionContainers}
 	}
 	return nil
-}
-
-// eventText is an event in a few words.
-func eventText(e journal.Event) string {
-	text := e.What
-	if e.MassKg != "" {
-		text += " " + e.MassKg + " kg"
-	}
-	if e.VolumeL != "" {
-		text += " " + e.VolumeL + " L"
-	}
-	if e.Gravity.Text != "" {
-		text += " of " + e.Gravity.Text
-	}
-	if e.From != "" {
-		text += " from " + e.From
-	}
-	if e.Vessel != "" {
-		text += " to " + e.Vessel
-	}
-	if e.Note != "" {
-		text += ": " + e.Note
-	}
-	return text
 }

@@ -16,6 +16,7 @@ import (
 const (
 	exitOK          = 0
 	exitFailed      = 1
+	exitNotMet      = 3 // a decision test, with --check alone
 	exitUsage       = 64
 	exitData        = 65
 	exitNoInput     = 66

@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"io"
+	"io/fs"
 	"os"
 	"path/filepath"
 
@@ -22,7 +23,7 @@ func (b *bench) exportCommand() *cli.Command {
 			comma), tab.`,
 		Flags: []cli.Flag{
 			&cli.StringFlag{Name: "profile", Value: string(exchange.Standard), Usage: "`P` of the CSV: standard, spreadsheet-eu, tab"},
-			&cli.StringFlag{Name: "output", Aliases: []string{"o"}, Usage: "`FILE` to write instead of stdout"},
+			&cli.StringFlag{Name: "output", Aliases: []string{"o"}, Usage: "new `FILE` to write instead of stdout"},
 		},
 	}, `gylebook export -o season.jsonl
 		gylebook export --csv --profile spreadsheet-eu -o readings.csv`, b.export)
@@ -43,7 +44,13 @@ func (b *bench) export(c *cli.Context) error {
 	if err != nil {
 		return usageError("", "--profile: %v", err)
 	}
+	file := c.String("output")
 	return b.withJournal(c.Context, func(s journal.Store) error {
+		if file != "" {
+			if err := b.freeName(file); err != nil {
+				return err
+			}
+		}
 		write := func(w io.Writer) error {
 			if !csv {
 				_, err := exchange.WriteLines(c.Context, w, s)
@@ -55,7 +62,7 @@ func (b *bench) export(c *cli.Context) error {
 			}
 			return exchange.WriteReadings(c.Context, w, s, profile, book)
 		}
-		if file := c.String("output"); file != "" {
+		if file != "" {
 			err = intoFile(file, write)
 		} else {
 			err = write(b.out)
@@ -67,23 +74,54 @@ func (b *bench) export(c *cli.Context) error {
 	})
 }
 
-// intoFile writes beside a file and gives it its name when it is whole.
-func intoFile(name string, write func(io.Writer) error) (err error) {
+// freeName refuses a file that is there already, one beside the journal that the
+// journal itself uses, and a folder that is not there.
+func (b *bench) freeName(name string) error {
+	if _, err := os.Lstat(name); err == nil {
+		return occupied(name)
+	}
+	for _, of := range []string{"-wal", "-shm", "-journal"} {
+		if absolute(name) == absolute(b.place())+of {
+			return &exitError{exitCannotWrite, name + " is a file of the journal; choose another name", ""}
+		}
+	}
+	folder := filepath.Dir(name)
+	switch info, err := os.Stat(folder); {
+	case errors.Is(err, fs.ErrNotExist):
+		return &exitError{exitCannotWrite, "the folder " + folder + " is not there", "make it first, or name another"}
+	case err == nil && !info.IsDir():
+		return &exitError{exitCannotWrite, folder + " is not a folder", "name a file in a folder that can be written"}
+	}
+	return nil
+}
+
+func occupied(name string) error {
+	return &exitError{exitCannotWrite, name + " exists; choose another name", ""}
+}
+
+// intoFile writes beside a new file and gives it its name when it is whole. A file
+// that is there is left alone.
+func intoFile(name string, write func(io.Writer) error) error {
 	f, err := os.CreateTemp(filepath.Dir(name), "."+filepath.Base(name)+"-*")
 	if err != nil {
 		return cannotWrite(name, err)
 	}
-	defer func() {
-		if err != nil {
-			_ = f.Close()
-			_ = os.Remove(f.Name())
-		}
-	}()
+	defer unfinished.add(f.Name())()
+	defer func() { _ = os.Remove(f.Name()) }()
 	if err := write(f); err != nil {
+		_ = f.Close()
 		return err
 	}
 	if err := errors.Join(f.Sync(), f.Close()); err != nil {
 		return cannotWrite(name, err)
+	}
+	// A link never takes the place of a file; where there are no links, a look
+	// just before has to do.
+	if err = os.Link(f.Name(), name); err == nil {
+		return nil
+	}
+	if _, there := os.Lstat(name); there == nil {
+		return occupied(name)
 	}
 	if err := os.Rename(f.Name(), name); err != nil {
 		return cannotWrite(name, err)
@@ -91,6 +129,16 @@ func intoFile(name string, write func(io.Writer) error) (err error) {
 	return nil
 }
 
+// cannotWrite names the file that was asked for, not the one written beside it.
 func cannotWrite(name string, err error) error {
-	return &exitError{exitCannotWrite, fmt.Sprintf("%s: %v", name, err), "name a file in a folder that can be written"}
+	why := err
+	var path *os.PathError
+	var link *os.LinkError
+	switch {
+	case errors.As(err, &path):
+		why = path.Err
+	case errors.As(err, &link):
+		why = link.Err
+	}
+	return &exitError{exitCannotWrite, fmt.Sprintf("%s: %v", name, why), "name a file in a folder that can be written"}
 }

@@ -14,28 +14,32 @@ import (
 const appHelp = `gylebook - hydrometer readings, corrected, converted and explained
 
 examples:
-  gylebook correct 1.050 --temp 28C            a reading at its reference temperature
-  gylebook correct 1.012 --temp 30C --og 1.048 the same while it ferments
-  gylebook convert 12P                         every scale
-  gylebook abv 1.048 1.010                     alcohol by every method, with the spread
-  gylebook attenuation 1.048 1.010             extracts and degrees of fermentation
-  gylebook refractometer 12.1 6.4              present gravity from two Brix readings
-  gylebook table scales --from 1.030 --to 1.060
-  gylebook sources asbc                        where a relation comes from
-  gylebook selfcheck                           the published rows, recomputed
+  gylebook correct 1.050 --temp 28C  a reading at its reference temperature
+  gylebook abv 1.048 1.010           alcohol by every method, with the spread
+  gylebook log T4 1.012 18           a reading into the journal
+  gylebook today                     open batches, the neediest first
+  gylebook season 2026               what each product and yeast came to
 
 usage: gylebook COMMAND VALUES [flags]
-
-commands:
+{{range .VisibleCategories}}
+{{.Name}}:
 {{range .VisibleCommands}}  {{printf "%-15s" .Name}}{{.Usage}}
-{{end}}
+{{end}}{{end}}
 gylebook COMMAND --help shows the flags. Flags may stand anywhere; --json and
 --csv print for machines; --explain shows every step. Values may be 1.048, 1048,
 48 (points), 12P, 12.1Bx, 90Oe, 18.2KMW, 6.9Be, 18Tw, 1046kg/m3, 104g/L.
 
-exit codes: 0 done, 1 failed, 64 wrong usage, 65 bad data, 73 cannot write,
-130 interrupted
+exit codes: 0 done, 1 failed, 64 wrong usage, 65 bad data, 66 no such file,
+73 cannot write, 130 interrupted
 `
+
+// grouped puts commands under one head in appHelp; the heads are in their own order.
+func grouped(head string, commands ...*cli.Command) []*cli.Command {
+	for _, c := range commands {
+		c.Category = head
+	}
+	return commands
+}
 
 // commandHelp is a command's help: examples first, then usage and flags.
 func commandHelp(cmd *cli.Command, own []cli.Flag, examples string) string {

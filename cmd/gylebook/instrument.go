@@ -50,6 +50,9 @@ func (b *bench) instrumentAdd() *cli.Command {
 			if c.Args().Len() != 1 {
 				return wanted(c, "one id")
 			}
+			if strings.EqualFold(c.Args().First(), noInstrument) {
+				return dataError("choose another id", "%q stands for no instrument, as in --instrument none", noInstrument)
+			}
 			body, err := b.instrumentOf(c)
 			if err != nil {
 				return err
@@ -161,7 +164,7 @@ func (b *bench) acknowledge(name string, e journal.Entry, id, text string, notes
 	return b.print(sheet{
 		name:    name,
 		records: []tables.Record{entryRecord(e, id, notes)},
-		ladder:  &tables.Ladder{Answer: []string{text}},
+		ladder:  &tables.Ladder{Answer: []string{numberedLine(text, e)}},
 	})
 }
 

@@ -43,6 +43,9 @@ func (b *bench) checkInstrument(c *cli.Context) error {
 		if err != nil {
 			return err
 		}
+		if err := inUseAt(rec, at); err != nil {
+			return err
+		}
 		h, _, err := journal.NewBook([]*journal.InstrumentRecord{rec}).Hydrometer(rec.Instrument.ID, at)
 		if err != nil {
 			return err

@@ -78,7 +78,7 @@ func history(rec *journal.InstrumentRecord) []deed {
 		if n := len(x.Body.Points); n > 1 {
 			span += " to " + x.Body.Points[n-1].Correction
 		}
-		what := fmt.Sprintf("certificate, %d points", len(x.Body.Points))
+		what := "certificate, " + counted(len(x.Body.Points), "point")
 		if x.Body.Reference != "" {
 			what += ", " + x.Body.Reference
 		}

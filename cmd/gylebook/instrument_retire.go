@@ -1,7 +1,7 @@
 package main
 
 import (
-	"fmt"
+	"math"
 	"strings"
 
 	"github.com/urfave/cli/v2"
@@ -37,6 +37,14 @@ func (b *bench) instrumentRetire() *cli.Command {
 				notes = append(notes, cautionBroken)
 			}
 			return b.withJournal(c.Context, func(s journal.Store) error {
+				rec, err := instrumentBy(c.Context, s, body.Instrument)
+				if err != nil {
+					return err
+				}
+				if err := inUseAt(rec, forever); err != nil {
+					return err
+				}
+				body.Instrument = rec.Instrument.ID
 				e, err := b.commitOne(c.Context, s, body)
 				if err != nil {
 					return err
@@ -89,13 +97,37 @@ func (b *bench) instrumentCertificate() *cli.Command {
 				body.Points = append(body.Points, p)
 			}
 			return b.withJournal(c.Context, func(s journal.Store) error {
+				rec, err := instrumentBy(c.Context, s, body.Instrument)
+				if err != nil {
+					return err
+				}
+				if err := firstError(inUseAt(rec, at), possibleCorrections(rec, body)); err != nil {
+					return err
+				}
+				body.Instrument = rec.Instrument.ID
 				e, err := b.commitOne(c.Context, s, body)
 				if err != nil {
 					return err
 				}
-				return b.acknowledge("instrument-certificate", e, body.Instrument, fmt.Sprintf("certificate of %s with %d points", body.Instrument, len(body.Points)))
+				return b.acknowledge("instrument-certificate", e, body.Instrument, "certificate of "+body.Instrument+" with "+counted(len(body.Points), "point"))
 			})
 		})
+}
+
+// possibleCorrections refuses a correction that no hydrometer in order has: it is a
+// reading in the place of one, or a slip of the decimal mark.
+func possibleCorrections(rec *journal.InstrumentRecord, c journal.Certificate) error {
+	h, _, err := journal.NewBook([]*journal.InstrumentRecord{rec}).Hydrometer(rec.Instrument.ID, c.At)
+	if err != nil {
+		return nil //nolint:nilerr // an instrument of another type, whose corrections are not bounded here
+	}
+	for _, p := range c.Points {
+		if v, err := asread.ParseNumber(p.Correction); err == nil && math.Abs(v.Float()) > tooFar(h) {
+			return dataError("type what to add to the reading: --point 1.000,+0.0004,0.0002",
+				"correction %s at %s: too large for an instrument in order", p.Correction, p.Reading)
+		}
+	}
+	return nil
 }
 
 // list is a flag that may stand several times; a comma in it divides nothing.

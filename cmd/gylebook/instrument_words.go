@@ -58,7 +58,7 @@ func (one comparison) sheet(e journal.Entry, h tempcorr.Hydrometer) sheet {
 	return sheet{
 		name: "instrument-check", records: []tables.Record{rec},
 		ladder: &tables.Ladder{
-			Answer: []string{one.inWords()},
+			Answer: []string{numberedLine(one.inWords(), e)},
 			Rungs: []tables.Rung{
 				{Name: "found", Value: fixed(one.found.Value, placesOf(one.found)), Remark: fmt.Sprintf("%s at %s in %s", one.found.ReadAs(), one.temp.ReadAs(), liquid)},
 				{Name: "expected", Value: fixed(one.expected, one.places), Remark: one.model(h)},

@@ -79,7 +79,7 @@ func (b *bench) printPlace(name, place string, entries int64) error {
 	return b.print(sheet{
 		name:    name,
 		records: []tables.Record{{{Name: "journal", Value: absolute(place)}, {Name: "entries", Value: int(entries)}}},
-		ladder:  &tables.Ladder{Answer: []string{absolute(place), fmt.Sprintf("%d entries", entries)}},
+		ladder:  &tables.Ladder{Answer: []string{absolute(place), count(int(entries), "entry", "entries")}},
 	})
 }
 
@@ -107,6 +107,26 @@ func (b *bench) audit(ctx context.Context, s journal.Store) error {
 	return nil
 }
 
+// allHold returns how many entries hold, and exit 1 when one does not.
+func allHold(ctx context.Context, s journal.Reader) (int64, error) {
+	n, err := journal.VerifyAll(ctx, s)
+	if err == nil || ctx.Err() != nil {
+		return n, err
+	}
+	return n, &exitError{
+		exitFailed, fmt.Sprintf("%v; the %s before it", err, count(int(n), "entry holds", "entries hold")),
+		"keep the file as it is; a backup from before the change holds what was written",
+	}
+}
+
+// count is a number with its noun.
+func count(n int, one, more string) string {
+	if n == 1 {
+		return "1 " + one
+	}
+	return fmt.Sprintf("%d %s", n, more)
+}
+
 func (b *bench) journalVerify() *cli.Command {
 	return b.sub("journal", &cli.Command{
 		Name: "verify", Usage: "check that no entry was changed, lost or put in",
@@ -117,10 +137,7 @@ func (b *bench) journalVerify() *cli.Command {
 			return wanted(c, "none; name the place with --journal")
 		}
 		return b.withJournal(c.Context, func(s journal.Store) error {
-			n, err := journal.VerifyAll(c.Context, s)
-			if err != nil && c.Context.Err() == nil {
-				return &exitError{exitFailed, fmt.Sprintf("%v; the %d entries before it hold", err, n), "keep the file as it is; a backup from before the change holds what was written"}
-			}
+			n, err := allHold(c.Context, s)
 			if err != nil {
 				return err
 			}
@@ -139,7 +156,7 @@ func (b *bench) journalVerify() *cli.Command {
 					{Name: "holds", Value: true},
 					{Name: "chain", Value: nilIfEmpty(chain)},
 				}},
-				ladder: &tables.Ladder{Answer: []string{fmt.Sprintf("%d entries hold", n)}},
+				ladder: &tables.Ladder{Answer: []string{count(int(n), "entry holds", "entries hold")}},
 			})
 		})
 	})
@@ -155,7 +172,16 @@ func (b *bench) journalBackup() *cli.Command {
 		}
 		file := c.Args().First()
 		return b.withJournal(c.Context, func(s journal.Store) error {
+			if err := b.freeName(file); err != nil {
+				return err
+			}
+			if _, err := allHold(c.Context, s); err != nil {
+				return err
+			}
 			err := s.Backup(c.Context, file)
+			if errors.Is(err, journal.ErrExists) {
+				return occupied(file)
+			}
 			if err != nil && c.Context.Err() == nil && !errors.Is(err, journal.ErrNoJournal) {
 				return &exitError{exitCannotWrite, fmt.Sprintf("backup %s: %v", file, err), "name a new file in a folder that can be written"}
 			}
@@ -188,7 +214,7 @@ func (b *bench) journalDemo() *cli.Command {
 		}
 		s, err := sqlstore.Create(c.Context, c.Args().First())
 		if errors.Is(err, journal.ErrExists) {
-			return &exitError{exitCannotWrite, "a file is at " + c.Args().First(), "name a new file"}
+			return occupied(c.Args().First())
 		}
 		if err != nil {
 			return err

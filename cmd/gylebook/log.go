@@ -19,7 +19,7 @@ func (b *bench) logCommand() *cli.Command {
 		Description: `The instrument is --instrument, else the only one in use, else your last. A reading that cannot be right is
 			held: on a terminal you are asked, in a pipe it is refused and nothing is written. "-" reads stdin, one reading a line.`,
 		Flags: []cli.Flag{
-			&cli.StringFlag{Name: "taken", Usage: "`TIME` when it was taken, now unless given: 14:30, \"yesterday 18:30\""},
+			&cli.StringFlag{Name: "taken", Aliases: []string{"at"}, Usage: "`TIME` when it was taken, now unless given: 14:30, \"yesterday 18:30\""},
 			&cli.BoolFlag{Name: "estimated", Usage: "the time is only about right"},
 			&cli.StringFlag{Name: "instrument", Usage: "`ID` that it was read with; none for none of the journal's"},
 			&cli.BoolFlag{Name: "gassy", Usage: "the sample was not degassed"},
@@ -114,7 +114,8 @@ func logLines(l logged) []string {
 		with = ", " + one.Source.Instrument
 	}
 	if one.Err != nil {
-		return []string{fmt.Sprintf("%s   read %s at %s%s, not corrected", name, one.Source.Gravity.Text, one.Source.Temp.Text, with), one.Err.Error()}
+		first := fmt.Sprintf("%s   read %s at %s%s, not corrected", name, one.Source.Gravity.Text, one.Source.Temp.Text, with)
+		return []string{first, numberedLine(one.Err.Error(), l.entry)}
 	}
 	value := fixed(float64(one.Result.SG), 4)
 	if scale := one.Typed.Scale; scale.IsMass() {
@@ -126,20 +127,28 @@ func logLines(l logged) []string {
 	}
 	first := fmt.Sprintf("%s   %s (read %s at %s%s)", name, value, read, one.Temp.ReadAs(), with)
 	var parts []string
-	if one.Suspect {
-		parts = append(parts, "kept as suspect: "+one.Source.Keep)
+	if one.Suspect { // figures leave it out
+		return []string{first, numberedLine("kept as suspect: "+one.Source.Keep, l.entry)}
 	}
 	if f, ok := fallTo(l.view, one); ok {
 		word := "fell"
 		if f.points < 0 {
 			word, f.points = "rose", -f.points
 		}
-		parts = append(parts, fmt.Sprintf("%s %s points in %s h", word, fixed(f.points, 1), fixed(f.hours, 1)))
+		parts = append(parts, fmt.Sprintf("%s %s points in %s", word, fixed(f.points, 1), hoursText(f.hours)))
 	}
 	if one.Attenuation != nil {
 		parts = append(parts, "apparent "+fixed(one.Attenuation.Apparent, 1)+" %")
 	} else {
 		parts = append(parts, "apparent "+none+" ("+cmp.Or(one.Why, "not known")+")")
 	}
-	return []string{first, strings.Join(parts, "   ")}
+	return []string{first, numberedLine(strings.Join(parts, "   "), l.entry)}
+}
+
+// hoursText is a span of time in hours, below one in minutes.
+func hoursText(hours float64) string {
+	if hours < 1 {
+		return fixed(60*hours, 0) + " min"
+	}
+	return fixed(hours, 1) + " h"
 }

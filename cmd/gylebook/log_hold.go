@@ -86,6 +86,10 @@ func (b *bench) askLine(question string) string {
 	return strings.TrimSpace(line)
 }
 
+// addedBefore is how long before its reading an addition is taken to have been that
+// was typed when the reading was held.
+const addedBefore = time.Minute
+
 // askAddition asks what was added just before the reading.
 func (b *bench) askAddition(in *toLog) (bool, error) {
 	fields := asread.Fields(b.askLine("what was added (sugar 2kg, dilution 5L, top-up 10L 1.040)"))
@@ -93,23 +97,12 @@ func (b *bench) askAddition(in *toLog) (bool, error) {
 		return false, nil
 	}
 	kind := strings.ToLower(fields[0])
-	if !slices.Contains(journal.EventKinds, kind) || len(fields) > 3 {
+	if !slices.Contains(journal.EventKinds, kind) || len(fields) > 4 {
 		return false, dataError("type a kind, an amount and, where it is no water or sugar, its gravity",
 			"read %.40q, wanted one of %s", strings.Join(fields, " "), strings.Join(journal.EventKinds, ", "))
 	}
-	e := journal.Event{What: kind, At: in.at.Add(-time.Minute)}
-	mass, volume, gravity := "", "", ""
-	if len(fields) > 1 {
-		if _, err := asread.ParseMass(fields[1]); err == nil {
-			mass = fields[1]
-		} else {
-			volume = fields[1]
-		}
-	}
-	if len(fields) > 2 {
-		gravity = fields[2]
-	}
-	if err := b.amounts(&e, mass, volume, gravity); err != nil {
+	e := journal.Event{What: kind, At: in.at.Add(-addedBefore)}
+	if err := b.amounts(&e, fields[1:], "", "", ""); err != nil {
 		return false, err
 	}
 	in.before = &e

@@ -1,10 +1,13 @@
 package main
 
 import (
+	"cmp"
 	"context"
 	"errors"
+	"maps"
 	"math"
 	"slices"
+	"strings"
 	"time"
 
 	"gylebook/attenuation/journal"
@@ -37,7 +40,7 @@ type logged struct {
 // of a bare number, and asks about a doubtful value where a person sits. The batch
 // is left open.
 func (b *bench) typedReading(ctx context.Context, s journal.Reader, in toLog) (journal.Reading, error) {
-	inst, err := b.instrumentFor(ctx, s, in.instrument)
+	inst, err := b.instrumentFor(ctx, s, in.instrument, in.name)
 	if err != nil {
 		return journal.Reading{}, err
 	}
@@ -66,11 +69,18 @@ func (b *bench) logOne(ctx context.Context, s journal.Store, in toLog) (logged, 
 // reading that is held is a *journal.Hold, and nothing is written.
 func (b *bench) logTyped(ctx context.Context, s journal.Store, name string, r journal.Reading, before *journal.Event) (logged, error) {
 	var done logged
+	var at journal.Situation
 	entries, err := b.commit(ctx, s, func(view journal.Reader) ([]journal.Body, error) {
-		at, err := situationOf(ctx, view, name, b.set.now)
-		if err != nil {
+		var err error
+		if at, err = situationOf(ctx, view, name, b.set.now); err != nil {
 			return nil, err
 		}
+		var errFind error
+		at.Find = func() (open []*journal.Record) {
+			open, errFind = view.Open(ctx)
+			return open
+		}
+		at.Expect = foresightWith(ctx, view, at.Book, r.TakenAt).expect
 		r.Batch, r.Vessel = at.Target.Batch.ID, vesselOf(at.Target)
 		var bodies []journal.Body
 		if before != nil {
@@ -82,8 +92,16 @@ func (b *bench) logTyped(ctx context.Context, s journal.Store, name string, r jo
 			at.Target = &target
 		}
 		var hold *journal.Hold
-		if done.notes, hold = journal.Judge(at, r); hold != nil {
+		done.notes, hold = journal.Judge(at, r)
+		if errFind != nil {
+			return nil, errFind
+		}
+		if hold != nil {
 			return nil, hold
+		}
+		if r.Keep != "" && !slices.ContainsFunc(done.notes, func(n method.Note) bool { return n.Code == method.WithReason }) {
+			done.notes = append(done.notes, method.Note{Code: method.WithReason, Text: "nothing about it is doubted: it counts, and the reason is kept as its note"})
+			r.Note, r.Keep = strings.TrimPrefix(r.Note+"; "+r.Keep, "; "), ""
 		}
 		return append(bodies, r), nil
 	})
@@ -96,16 +114,16 @@ func (b *bench) logTyped(ctx context.Context, s journal.Store, name string, r jo
 	} else {
 		done.entry = entries[len(entries)-1]
 	}
-	if err := done.derive(ctx, s, r.Batch); err != nil {
-		return done, err
-	}
+	// The view that the book asked about blends is over.
+	at.Book.OE = otherExtract(ctx, s, slices.Collect(maps.Values(at.Book.Instruments)), nil)
+	done.derive(at, entries)
 	return done, nil
 }
 
 // situationOf is what a reading of the vessel or batch with this name is judged
-// against.
+// against, without the other open batches.
 func situationOf(ctx context.Context, view journal.Reader, name string, now time.Time) (journal.Situation, error) {
-	open, err := view.Open(ctx)
+	open, err := view.OpenLast(ctx, 0)
 	if err != nil {
 		return journal.Situation{}, err
 	}
@@ -113,30 +131,47 @@ func situationOf(ctx context.Context, view journal.Reader, name string, now time
 	if err != nil {
 		return journal.Situation{}, err
 	}
+	if rec, err = view.Batch(ctx, rec.Batch.ID); err != nil { // with all its readings
+		return journal.Situation{}, err
+	}
 	book, err := bookOf(ctx, view)
 	if err != nil {
 		return journal.Situation{}, err
 	}
-	others := slices.DeleteFunc(open, func(o *journal.Record) bool { return o.Batch.ID == rec.Batch.ID })
-	return journal.Situation{Now: now, Target: rec, Book: book, Others: others}, nil
+	return journal.Situation{Now: now, Target: rec, Book: book}, nil
 }
 
-// derive fills the view after the entry. The newest two readings do for the fall,
-// unless the reading is older than these.
-func (l *logged) derive(ctx context.Context, s journal.Reader, batch string) error {
-	rec, err := s.Batch(ctx, batch)
-	if err != nil {
-		return err
+// derive fills the view after the entries, which the batch as it was judged does
+// not hold yet. The newest two readings do for the fall, unless the reading is older
+// than these.
+func (l *logged) derive(at journal.Situation, entries []journal.Entry) {
+	rec := *at.Target
+	for _, e := range entries {
+		switch body := e.Body.(type) {
+		case journal.Reading:
+			rec.Readings = inOrder(append(slices.Clone(rec.Readings), numbered(e, body)), func(r journal.Reading) time.Time { return r.TakenAt })
+		case journal.Event:
+			// In the place of the one that stood for it.
+			rec.Events = slices.DeleteFunc(slices.Clone(rec.Events), func(n journal.Numbered[journal.Event]) bool { return n.Number == math.MaxInt64 })
+			rec.Events = inOrder(append(rec.Events, numbered(e, body)), func(e journal.Event) time.Time { return e.At })
+		}
 	}
-	book, err := bookOf(ctx, s)
-	if err != nil {
-		return err
-	}
-	if l.view = journal.DeriveLast(rec, book, 2); !l.find() {
-		l.view = journal.Derive(rec, book)
+	if l.view = journal.DeriveLast(&rec, at.Book, 2); !l.find() {
+		l.view = journal.Derive(&rec, at.Book)
 		l.find()
 	}
-	return nil
+}
+
+// inOrder sorts entries by their own time, then by number, as a record holds them.
+func inOrder[B journal.Body](list []journal.Numbered[B], at func(B) time.Time) []journal.Numbered[B] {
+	slices.SortFunc(list, func(a, b journal.Numbered[B]) int {
+		return cmp.Or(at(a.Body).Compare(at(b.Body)), cmp.Compare(a.Number, b.Number))
+	})
+	return list
+}
+
+func numbered[B journal.Body](e journal.Entry, body B) journal.Numbered[B] {
+	return journal.Numbered[B]{Number: e.Number, RecordedAt: e.RecordedAt, By: e.By, Body: body}
 }
 
 // find looks for the entry's value in the view.

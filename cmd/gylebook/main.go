@@ -14,6 +14,9 @@ func main() {
 	ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt)
 	defer stop()
 	// A read that waits for input does not see ctx: the interrupt ends the program.
-	context.AfterFunc(ctx, func() { os.Exit(exitInterrupted) })
+	context.AfterFunc(ctx, func() {
+		unfinished.remove()
+		os.Exit(exitInterrupted)
+	})
 	os.Exit(run(ctx, os.Args[1:], os.Stdin, os.Stdout, os.Stderr))
 }

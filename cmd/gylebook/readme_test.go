@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"os"
 	"os/exec"
+	"slices"
 	"strconv"
 	"strings"
 	"testing"
@@ -65,7 +66,8 @@ func examples(readme string) (all []example, blocks int, err error) {
 }
 
 // call splits a command into the words after gylebook and its standard input.
-// Words stand between spaces; quotes are known in printf '…' only.
+// Words stand between spaces or in double quotes; single quotes are known in
+// printf '…' only.
 func (e example) call() (args []string, stdin string, err error) {
 	command := e.command
 	if rest, ok := strings.CutPrefix(command, "printf '"); ok {
@@ -77,13 +79,27 @@ func (e example) call() (args []string, stdin string, err error) {
 	}
 	for _, program := range []string{"gylebook ", "go run ./cmd/gylebook "} {
 		if words, ok := strings.CutPrefix(command, program); ok {
-			if strings.ContainsAny(words, `'"|>$\`) {
-				return nil, "", fmt.Errorf("read %q, wanted plain words", words)
-			}
-			return strings.Fields(words), stdin, nil
+			args, err = plainWords(words)
+			return args, stdin, err
 		}
 	}
 	return nil, "", fmt.Errorf("read %q, wanted gylebook or go run ./cmd/gylebook", command)
+}
+
+// plainWords splits a line at spaces that are not in double quotes.
+func plainWords(line string) (words []string, err error) {
+	parts := strings.Split(line, `"`)
+	if strings.ContainsAny(line, `'|>$\`) || len(parts)%2 == 0 {
+		return nil, fmt.Errorf("read %q, wanted plain words", line)
+	}
+	for i, part := range parts {
+		if i%2 == 1 {
+			words = append(words, part)
+			continue
+		}
+		words = append(words, strings.Fields(part)...)
+	}
+	return words, nil
 }
 
 func readReadme(t *testing.T) string {
@@ -95,8 +111,12 @@ func readReadme(t *testing.T) string {
 	return string(text)
 }
 
+// home stands in the README for the folder that its commands run in.
+const home = "/home/ines"
+
 // The program runs as a process of its own, so that the locale and the terminal
-// of whoever runs the tests do not reach it.
+// of whoever runs the tests do not reach it. The commands run in one new folder, in
+// order, a minute apart: what one logs the next ones see.
 func TestReadmeExamples(t *testing.T) {
 	all, blocks, err := examples(readReadme(t))
 	if err != nil {
@@ -105,16 +125,24 @@ func TestReadmeExamples(t *testing.T) {
 	if blocks < 5 {
 		t.Errorf("%d console blocks, wanted at least 5", blocks)
 	}
+	dir := t.TempDir()
+	env := []string{"HOME=" + dir, "XDG_DATA_HOME=" + dir, "GYLEBOOK_OPERATOR=ines", "TZ=Europe/Berlin"}
+	for name, value := range fixedEnv {
+		env = append(env, name+"="+value)
+	}
+	clock, err := strconv.Atoi(fixedEnv["SOURCE_DATE_EPOCH"])
+	if err != nil {
+		t.Fatal(err)
+	}
 	for _, e := range all {
+		clock += 60
 		t.Run(fmt.Sprintf("line %d", e.line), func(t *testing.T) {
 			args, stdin, err := e.call()
 			if err != nil {
 				t.Fatal(err)
 			}
 			cmd := exec.Command("gylebook", args...)
-			for name, value := range fixedEnv {
-				cmd.Env = append(cmd.Env, name+"="+value)
-			}
+			cmd.Dir, cmd.Env = dir, append(slices.Clip(env), "SOURCE_DATE_EPOCH="+strconv.Itoa(clock))
 			var stdout, stderr bytes.Buffer
 			cmd.Stdin, cmd.Stdout, cmd.Stderr = strings.NewReader(stdin), &stdout, &stderr
 			var exit *exec.ExitError
@@ -122,12 +150,12 @@ func TestReadmeExamples(t *testing.T) {
 				t.Fatal(err)
 			}
 			if got := cmd.ProcessState.ExitCode(); got != e.exit {
-				t.Errorf("exit code %d, wanted %d", got, e.exit)
+				t.Errorf("exit code %d, wanted %d; stderr %s", got, e.exit, stderr.String())
 			}
-			if diff := cmp.Diff(e.stdout, stdout.String()); diff != "" {
+			if diff := cmp.Diff(e.stdout, strings.ReplaceAll(stdout.String(), dir, home)); diff != "" {
 				t.Errorf("stdout of %q: -README +program\n%s", e.command, diff)
 			}
-			if diff := cmp.Diff(e.stderr, stderr.String()); e.hasStderr && diff != "" {
+			if diff := cmp.Diff(e.stderr, strings.ReplaceAll(stderr.String(), dir, home)); e.hasStderr && diff != "" {
 				t.Errorf("stderr of %q: -README +program\n%s", e.command, diff)
 			}
 		})
@@ -166,7 +194,12 @@ func TestExamples(t *testing.T) {
 	if diff := cmp.Diff([]string{"convert", "-"}, args); diff != "" || stdin != "1\n2\n" || err != nil {
 		t.Errorf("%s, stdin %q, %v", diff, stdin, err)
 	}
-	for _, command := range []string{"ls", "printf '1' gylebook", "gylebook convert '12 P'", ""} {
+	quoted := example{command: `gylebook log T4 1.012 18 --taken "yesterday 18:00"`}
+	args, _, err = quoted.call()
+	if diff := cmp.Diff([]string{"log", "T4", "1.012", "18", "--taken", "yesterday 18:00"}, args); diff != "" || err != nil {
+		t.Errorf("%s, %v", diff, err)
+	}
+	for _, command := range []string{"ls", "printf '1' gylebook", "gylebook convert '12 P'", `gylebook convert "12 P`, ""} {
 		if args, _, err := (example{command: command}).call(); err == nil {
 			t.Errorf("%q: accepted as %q", command, args)
 		}

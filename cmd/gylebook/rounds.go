@@ -35,7 +35,7 @@ func (b *bench) rounds(c *cli.Context) error {
 		return usageError("for one reading: gylebook log VESSEL READING TEMP", "read %d values, wanted none; usage: gylebook rounds", c.Args().Len())
 	}
 	return b.withJournal(c.Context, func(s journal.Store) error {
-		open, err := s.Open(c.Context)
+		open, err := s.OpenLast(c.Context, 0)
 		if err != nil {
 			return err
 		}
@@ -100,11 +100,11 @@ func (b *bench) tick() {
 	}
 }
 
-// typed reads one reading of this moment.
-func (r *round) typed(reading, temp string) (journal.Reading, error) {
+// typed reads one reading of this moment of the vessel or batch with this name.
+func (r *round) typed(name, reading, temp string) (journal.Reading, error) {
 	r.tick()
 	return r.typedReading(r.ctx, r.store, toLog{
-		reading: reading, temp: temp, at: r.set.now.In(time.Local).Truncate(time.Second), quality: journal.Exact,
+		name: name, reading: reading, temp: temp, at: r.set.now.In(time.Local).Truncate(time.Second), quality: journal.Exact,
 		instrument: r.instrument, gassy: r.gassy,
 	})
 }
@@ -131,7 +131,7 @@ func (r *round) pipe() error {
 		if len(fields) != 3 {
 			return dataError("", "read %d values, wanted VESSEL READING TEMP", len(fields))
 		}
-		reading, err := r.typed(fields[1], fields[2])
+		reading, err := r.typed(fields[0], fields[1], fields[2])
 		if err != nil {
 			return err
 		}

@@ -24,11 +24,11 @@ func (r *round) enter(at int, line string) (then outcome, next string, err error
 		r.say("type reading and temperature: 1.012 18; ? explains")
 		return stay, "", nil
 	}
-	reading, err := r.typed(fields[0], fields[1])
+	name := r.stops[at].batch
+	reading, err := r.typed(name, fields[0], fields[1])
 	if err != nil {
 		return stay, "", r.refuse(err)
 	}
-	name := r.stops[at].batch
 	for {
 		done, err := r.log(name, reading)
 		var hold *journal.Hold

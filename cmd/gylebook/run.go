@@ -78,13 +78,18 @@ func (b *bench) app() *cli.App {
 		CustomAppHelpTemplate: appHelp,
 		ExitErrHandler:        func(*cli.Context, error) {},
 		OnUsageError:          onUsage,
-		Commands: []*cli.Command{
-			b.correctCommand(), b.convertCommand(), b.abvCommand(), b.attenuationCommand(),
-			b.refractometerCommand(), b.tableCommand(), b.sourcesCommand(), b.selfcheckCommand(),
-			b.instrumentCommand(), b.batchCommand(), b.logCommand(), b.undoCommand(), b.voidCommand(), b.eventCommand(),
-			b.exportCommand(), b.importCommand(), b.journalCommand(),
-			b.roundsCommand(), b.todayCommand(), b.seasonCommand(), b.completionCommand(), b.completeOpenCommand(),
-		},
+		Commands: slices.Concat(
+			grouped("bench",
+				b.correctCommand(), b.convertCommand(), b.abvCommand(), b.attenuationCommand(),
+				b.refractometerCommand(), b.tableCommand(), b.sourcesCommand(), b.selfcheckCommand(),
+			),
+			grouped("journal",
+				b.instrumentCommand(), b.batchCommand(), b.logCommand(), b.undoCommand(), b.voidCommand(), b.eventCommand(),
+				b.exportCommand(), b.importCommand(), b.journalCommand(),
+				b.roundsCommand(), b.todayCommand(), b.forecastCommand(), b.terminalCommand(), b.seasonCommand(), b.whyCommand(),
+				b.completionCommand(), b.completeOpenCommand(),
+			),
+		),
 	}
 	app.Action = func(c *cli.Context) error {
 		if c.Args().Len() == 0 {
@@ -131,7 +136,7 @@ func unknownCommand(name string, commands []*cli.Command) error {
 			names = append(names, c.Name)
 		}
 	}
-	return usageError("gylebook --help shows an example of each",
+	return usageError("gylebook --help lists them",
 		"unknown command %.40q, known: %s", name, strings.Join(names, ", "))
 }
 

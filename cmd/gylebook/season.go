@@ -3,10 +3,12 @@ package main
 import (
 	"cmp"
 	"fmt"
+	"slices"
 	"strconv"
 
 	"github.com/urfave/cli/v2"
 
+	"gylebook/attenuation/control"
 	"gylebook/attenuation/journal"
 	"gylebook/attenuation/season"
 	"gylebook/tables"
@@ -17,13 +19,17 @@ func (b *bench) seasonCommand() *cli.Command {
 		Name: "season", Usage: "what each product and yeast came to",
 		ArgsUsage: "[YEAR]",
 		Description: `The year is that of pitching. Figures of a product and yeast are medians of its closed batches, with the
-			interquartile range; days run from pitching to the last fall. --json and --csv have one row a batch.`,
+			interquartile range; days run from pitching to the last fall. From 15 closed batches of a product on, limits
+			are drawn from them (individuals chart) and batches that break one of Nelson's tests are named; then what the
+			generations of a yeast did. --json and --csv have one row a batch, --json charts and generations too.`,
 		Flags: []cli.Flag{
 			&cli.StringFlag{Name: "product", Usage: "`NAME` of the product"},
 			&cli.StringFlag{Name: "yeast", Usage: "`NAME` of the yeast"},
+			&cli.StringFlag{Name: "tests", Usage: "`NUMBERS` of Nelson's tests, 1 to 8; " + control.Default.String() + " unless given"},
 		},
 	}, `gylebook season
 		gylebook season 2026 --product "Lane Bitter"
+		gylebook season 2026 --tests 1,2,3,4,5,6,7,8
 		gylebook season 2026 --csv`, b.season)
 }
 
@@ -39,11 +45,19 @@ func (b *bench) season(c *cli.Context) error {
 		}
 		f.Year = year
 	}
+	tests := control.Default
+	if c.IsSet("tests") {
+		var err error
+		if tests, err = control.ParseSet(c.String("tests")); err != nil {
+			return usageError("gylebook season --tests "+control.Default.String(), "--tests: %v", err)
+		}
+	}
 	return b.withJournal(c.Context, func(s journal.Store) error {
 		book, err := bookOf(c.Context, s)
 		if err != nil {
 			return err
 		}
+		book.Plain = true // no uncertainty is shown
 		var rows []season.Row
 		count := b.counter("batches")
 		for row, err := range season.Rows(c.Context, s, f, book) {
@@ -55,11 +69,11 @@ func (b *bench) season(c *cli.Context) error {
 			count.to(len(rows))
 		}
 		count.end()
-		return b.print(b.seasonSheet(f, rows))
+		return b.print(b.seasonSheet(f, rows, tests))
 	})
 }
 
-func (b *bench) seasonSheet(f journal.Filter, rows []season.Row) sheet {
+func (b *bench) seasonSheet(f journal.Filter, rows []season.Row, tests control.Set) sheet {
 	s := sheet{name: "season", columns: names(seasonRecord(season.Row{}))}
 	open := 0
 	for _, r := range rows {
@@ -70,13 +84,11 @@ func (b *bench) seasonSheet(f journal.Filter, rows []season.Row) sheet {
 			open++
 		}
 	}
-	groups := season.Groups(rows)
 	if b.set.format == tables.JSON {
-		records := make([]tables.Record, len(groups))
-		for i, g := range groups {
-			records[i] = groupRecord(g)
-		}
-		s.summary = tables.Record{{Name: "groups", Value: records}}
+		s.summary = seasonSummary(rows, tests)
+	}
+	if !b.isText() {
+		return s
 	}
 	title := "all seasons"
 	if f.Year != 0 {
@@ -87,7 +99,13 @@ func (b *bench) seasonSheet(f journal.Filter, rows []season.Row) sheet {
 		s.ladder = &tables.Ladder{Answer: []string{title}}
 		return s
 	}
-	s.tables = []tables.Table{seasonTable(groups, title, b.set.width, b.set.plain || b.set.width < 60)}
+	stacked := b.set.plain || b.set.width < 60
+	lines := stacked && b.set.format != tables.Markdown
+	s.tables = slices.Concat(
+		[]tables.Table{seasonTable(season.Groups(rows), title, b.set.width, stacked)},
+		chartTables(season.Charts(rows, tests), lines),
+		generationTables(season.Lineages(rows), b.set.width, lines),
+	)
 	return s
 }
 

@@ -35,6 +35,10 @@ func seasonRecord(r season.Row) tables.Record {
 	if r.Attenuation != nil {
 		a = *r.Attenuation
 	}
+	var by any
+	if r.ABV != nil {
+		by = r.Method
+	}
 	given := func(x float64) any {
 		if r.Attenuation == nil {
 			return nil
@@ -47,7 +51,7 @@ func seasonRecord(r season.Row) tables.Record {
 		{Name: "real_attenuation_pct", Value: given(a.Real)},
 		{Name: "rdf_pct", Value: given(a.RDF)},
 		{Name: "abv_pct_20c", Value: number(r.ABV)},
-		{Name: "abv_method", Value: r.Method},
+		{Name: "abv_method", Value: by},
 		{Name: "limit_difference_pct", Value: number(r.LimitDifference)},
 		{Name: "why", Value: nilIfEmpty(cmp.Or(r.Why, r.ABVWhy))},
 	}...)

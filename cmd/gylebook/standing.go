@@ -51,6 +51,8 @@ type standing struct {
 	late   float64 // hours without a reading as a part of those usual at its stage
 	symbol string
 	word   string
+	state  string   // word of the forecast, "" without one
+	next   *float64 // SG that the forecast expects now
 	notes  []method.Note
 }
 

@@ -8,6 +8,7 @@ import (
 	"github.com/urfave/cli/v2"
 
 	"gylebook/attenuation/journal"
+	"gylebook/attenuation/outlook"
 )
 
 func (b *bench) todayCommand() *cli.Command {
@@ -15,8 +16,10 @@ func (b *bench) todayCommand() *cli.Command {
 		Name: "today", Usage: "open batches, the one that needs attention first",
 		Description: `The order: no reading for longest, for its stage (1.5 times what is usual: 24 h while it falls, 72 h once it
 			falls by less than 1 point in 24 h, 168 h from day 30 on); rising; not falling though far above the expected (the
-			limit of attenuation, else 50 % apparent attenuation); then by hours since the last reading. The words come from
-			the readings alone and approve of nothing; unchanged means within 0.5 point.`,
+			limit of attenuation, else 50 % apparent attenuation) or stalled; then by hours since the last reading. From three
+			readings on the word is that of gylebook terminal, and next is the gravity that the forecast expects now. Before, and
+			where a batch is late, rises or stands high, the word comes from the readings alone: unchanged is within 0.5 point. A
+			word approves of nothing; --explain says why there is no forecast.`,
 		Flags: []cli.Flag{
 			&cli.StringFlag{Name: "at", Usage: "`TIME` as the journal stood then: 2026-10-24 12:00, yesterday 18:30"},
 		},
@@ -45,7 +48,7 @@ func (b *bench) today(c *cli.Context) error {
 // standings are the open batches at a time, those that want attention first.
 // With past set the journal is taken as it stood then.
 func standings(ctx context.Context, r journal.Reader, at time.Time, past bool) ([]standing, error) {
-	book, err := bookOf(ctx, r)
+	f, err := newForesight(ctx, r, at, outlook.Drink{})
 	if err != nil {
 		return nil, err
 	}
@@ -58,12 +61,35 @@ func standings(ctx context.Context, r journal.Reader, at time.Time, past bool) (
 	if err != nil {
 		return nil, err
 	}
-	list := make([]standing, len(open))
+	histories := make([]outlook.History, len(open))
 	for i, rec := range open {
-		list[i] = standingOf(journal.DeriveLast(rec, book, 3), at)
+		if histories[i], err = f.history(rec); err != nil {
+			return nil, err
+		}
 	}
+	plain := *f.book
+	plain.Plain = true // no uncertainty is shown
+	list := make([]standing, len(open))
+	one := func(i int) {
+		list[i] = standingOf(journal.DeriveLast(open[i], &plain, 3), at)
+		e, err := outlook.EvidenceOf(f.view(open[i]), histories[i], at, false)
+		list[i].foresee(e, err)
+	}
+	var apart []int
+	for i, rec := range open {
+		if blended(rec) {
+			one(i) // the book asks the reader about the other batch, and that stays in here
+		} else {
+			apart = append(apart, i)
+		}
+	}
+	outlook.Each(len(apart), func(k int) { one(apart[k]) })
 	slices.SortStableFunc(list, byAttention)
-	return list, nil
+	return list, ctx.Err()
+}
+
+func blended(rec *journal.Record) bool {
+	return slices.ContainsFunc(rec.Events, func(e journal.Numbered[journal.Event]) bool { return e.Body.What == journal.Blend })
 }
 
 // openAt returns the batches that were open at a time, without what came later.
@@ -76,17 +102,7 @@ func openAt(ctx context.Context, r journal.Reader, at time.Time) ([]*journal.Rec
 		if rec.Batch.Opened.After(at) || rec.Closed != nil && !rec.Closed.Body.At.After(at) {
 			continue
 		}
-		then := *rec
-		then.Closed = nil
-		then.OGs = until(rec.OGs, at, func(o journal.OG) time.Time { return o.At })
-		then.Limits = until(rec.Limits, at, func(l journal.Limit) time.Time { return l.At })
-		then.Readings = until(rec.Readings, at, func(r journal.Reading) time.Time { return r.TakenAt })
-		then.Events = until(rec.Events, at, func(e journal.Event) time.Time { return e.At })
-		open = append(open, &then)
+		open = append(open, cutAt(rec, at))
 	}
 	return open, nil
-}
-
-func until[B any](list []journal.Numbered[B], at time.Time, of func(B) time.Time) []journal.Numbered[B] {
-	return slices.DeleteFunc(slices.Clone(list), func(n journal.Numbered[B]) bool { return of(n.Body).After(at) })
 }

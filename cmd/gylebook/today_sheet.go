@@ -12,7 +12,7 @@ import (
 
 var todayColumns = []string{
 	"batch", "vessel", "product", "day", "hours_since_reading", "sg_20_20", "fall_24h_points",
-	"apparent_attenuation_pct", "abv_pct_20c", "word", "notes",
+	"apparent_attenuation_pct", "abv_pct_20c", "word", "forecast_word", "next_sg_20_20", "notes",
 }
 
 func (b *bench) todaySheet(list []standing, at time.Time) sheet {
@@ -44,7 +44,7 @@ func (b *bench) todaySheet(list []standing, at time.Time) sheet {
 // that a person reads, so they are left to machines and to --explain.
 func (s standing) record(withNotes bool) tables.Record {
 	batch := s.view.Record.Batch
-	values := []any{batch.ID, s.vessel, batch.Product, nil, number(s.hours), nil, number(s.fall), nil, nil, s.word, []tables.Note{}}
+	values := []any{batch.ID, s.vessel, batch.Product, nil, number(s.hours), nil, number(s.fall), nil, nil, s.word, nilIfEmpty(s.state), number(s.next), []tables.Note{}}
 	if s.days != nil {
 		values[3] = int(math.Floor(*s.days))
 	}
@@ -61,7 +61,7 @@ func (s standing) record(withNotes bool) tables.Record {
 		}
 	}
 	if withNotes {
-		values[10] = neutral(notes)
+		values[12] = neutral(notes)
 	}
 	return record(todayColumns, values)
 }
@@ -74,7 +74,7 @@ func (s standing) cells() []string {
 		}
 		return fixed(*p, places)
 	}
-	cells := []string{s.vessel, s.view.Record.Batch.Product, "—", dash(s.hours, 0), "—", dash(s.fall, 1), "—", s.symbol + " " + s.word}
+	cells := []string{s.vessel, s.view.Record.Batch.Product, "—", dash(s.hours, 0), "—", dash(s.fall, 1), "—", s.symbol + " " + s.word, dash(s.next, 4)}
 	if s.vessel == "" {
 		cells[0] = s.view.Record.Batch.ID
 	}
@@ -95,9 +95,9 @@ func todayTable(list []standing, title string, width int) tables.Table {
 	t := tables.Table{
 		Title: title,
 		Columns: []tables.Column{
-			{Head: "vessel"}, {Head: "product"}, right("day"), right("hours"), right("gravity"), right("fall"), right("app. %"), {Head: "word"},
+			{Head: "vessel"}, {Head: "product"}, right("day"), right("hours"), right("gravity"), right("fall"), right("app. %"), {Head: "word"}, right("next"),
 		},
-		Foot: []string{"hours since the last reading; fall in points in 24 h; app. % attenuation"},
+		Foot: []string{"hours since the last reading; fall in points in 24 h; app. % attenuation; next:", "the gravity expected now, by the forecast"},
 	}
 	for _, one := range list {
 		t.Rows = append(t.Rows, one.cells())

@@ -33,17 +33,20 @@ func DetectColumns(sample []byte, numeric func(name string) bool) (Dialect, erro
 		even    bool // every record has as many fields as the header
 	}
 	var tries []try
+	seen := false
 	for _, comma := range separators {
 		records, whole := sampleRecords(sample, comma)
-		if len(records) == 0 {
-			return d, ErrEmpty
-		}
-		if len(records[0].Fields) > 1 {
+		// With a separator that is not the file's, a file in quotes has no record.
+		seen = seen || len(records) > 0
+		if len(records) > 0 && len(records[0].Fields) > 1 {
 			tries = append(tries, try{comma, records, whole && even(records)})
 		}
 	}
 	switch len(tries) {
 	case 0:
+		if !seen {
+			return d, ErrEmpty
+		}
 		return d, fmt.Errorf("%w: line 1 has one column, wanted columns separated by comma, semicolon or tab", ErrEmpty)
 	case 1:
 	default:

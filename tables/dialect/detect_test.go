@@ -24,6 +24,7 @@ func TestDetect(t *testing.T) {
 		{"separator inside a quoted name", "\"a;b\",c\n1.5,2\n", Dialect{Comma: ',', Decimal: '.'}},
 		{"separator in a name that rows lack", "a;b,c\n1.5,2\n", Dialect{Comma: ',', Decimal: '.'}},
 		{"quoted line end", "a,b\n\"x\ny\",1.5\n", Dialect{Comma: ',', Decimal: '.'}},
+		{"every field in quotes", "\"a\",\"b\"\n\"1.5\",\"x\"\n", Dialect{Comma: ',', Decimal: '.'}},
 		{"header alone", "a;b;c", Dialect{Comma: ';'}},
 	} {
 		t.Run(c.name, func(t *testing.T) {

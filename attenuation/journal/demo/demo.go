@@ -21,6 +21,7 @@ type Summary struct {
 	Voids       int
 	Stuck       []string  // batches that stopped high
 	Low         []string  // batches read with H2 while it read low
+	Cold        []string  // batches in a cold tank
 	From, Until time.Time // first and last entry
 }
 
@@ -105,6 +106,9 @@ func year() ([]item, Summary, error) {
 	for _, p := range season {
 		if p.stuck > 0 {
 			sum.Stuck = append(sum.Stuck, p.id)
+		}
+		if p.cold {
+			sum.Cold = append(sum.Cold, p.id)
 		}
 		if low[p.id] {
 			sum.Low = append(sum.Low, p.id)

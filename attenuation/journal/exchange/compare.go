@@ -1,8 +1,8 @@
 package exchange
 
 import (
-	"cmp"
 	"context"
+	"math"
 	"slices"
 
 	"gylebook/attenuation/journal"
@@ -10,21 +10,19 @@ import (
 
 // atOnce is how many readings of a batch are derived together, or a few more, so
 // that memory stays flat for a batch of any length.
-const atOnce = 4096
+const atOnce = 512
 
 type numbered = journal.Numbered[journal.Reading]
 
-// compare reckons the derived figures of the accepted rows and lists where the file
-// has others.
-func (d *draft) compare(ctx context.Context, numbers []int64) error {
-	if len(d.p.claims) == 0 {
-		return nil
-	}
+// judge finds repeats, refuses what cannot be whatever the order of the rows, and
+// lists where the file has other figures than those reckoned here, batch by batch.
+func (d *draft) judge(ctx context.Context) error {
 	newBook := d.p.opt.Book
 	if newBook == nil {
 		newBook = journal.NewBook
 	}
 	book := newBook(d.list)
+	book.Plain = len(d.p.claims) == 0 // nothing to compare an uncertainty with
 	for _, id := range d.order {
 		t := d.batches[id]
 		if len(t.rows) == 0 {
@@ -34,22 +32,22 @@ func (d *draft) compare(ctx context.Context, numbers []int64) error {
 		if err != nil {
 			return err
 		}
-		rows := make(map[int64]int32, len(t.rows)) // by number of entry
+		d.repeats(t, rec)
 		for _, i := range t.rows {
-			rows[numbers[i]] = i
-			rec.Readings = append(rec.Readings, d.numbered(int(i), numbers[i]))
+			if d.fate[i] == accepted {
+				rec.Readings = append(rec.Readings, d.numbered(int(i)))
+			}
 		}
-		all := rec.Readings
-		slices.SortFunc(all, func(a, b numbered) int {
-			return cmp.Or(a.Body.TakenAt.Compare(b.Body.TakenAt), cmp.Compare(a.Number, b.Number))
-		})
+		t.rows = nil
+		all := inTime(rec.Readings)
+		series := journal.NewSeries(rec, book)
 		for len(all) > 0 {
 			if err := ctx.Err(); err != nil {
 				return err
 			}
 			n := minuteEnd(all, atOnce)
 			rec.Readings, all = all[:n], all[n:]
-			d.compareSome(rec, rows, book)
+			d.judgeSome(series, rec, book)
 		}
 	}
 	return nil
@@ -67,10 +65,12 @@ func minuteEnd(all []numbered, n int) int {
 	return n
 }
 
-func (d *draft) numbered(i int, number int64) numbered {
+// numbered is a row as it would be read back. Its number stands for its place: the
+// entries are numbered when it is known which rows are accepted, in the same order.
+func (d *draft) numbered(i int) numbered {
 	reason, void := d.p.reasons[i]
 	return numbered{
-		Number: number, RecordedAt: d.p.now, By: d.p.by, Body: d.p.rows[i].body.(journal.Reading), Void: void, VoidReason: reason,
+		Number: d.last() + 1 + int64(i), RecordedAt: d.p.now, By: d.p.by, Body: d.p.rows[i].body.(journal.Reading), Void: void, VoidReason: reason,
 	}
 }
 
@@ -93,21 +93,45 @@ func (d *draft) record(ctx context.Context, id string, t *target) (*journal.Reco
 	return rec, nil
 }
 
-func (d *draft) compareSome(rec *journal.Record, rows map[int64]int32, book *journal.Book) {
+func (d *draft) judgeSome(series *journal.Series, rec *journal.Record, book *journal.Book) {
 	view := journal.Derive(rec, book)
+	first := d.last() + 1
 	for i := range view.Values {
 		v := &view.Values[i]
-		if place, ok := rows[v.Number]; ok && d.p.rows[place].claim >= 0 {
-			row := d.p.rows[place]
-			ours := figuresOf(v, book)
-			d.compareRow(int(row.line), rec.Batch.ID, &d.p.claims[row.claim], &ours)
+		fresh := v.Number >= first
+		if hold, number := series.Next(view, v, fresh); hold != nil {
+			d.hold(int(number-first), hold)
+		}
+		if !fresh {
+			continue
+		}
+		row := &d.p.rows[v.Number-first]
+		if row.claim >= 0 {
+			ours, c := figuresOf(v, book), unpackClaim(d.p.claims[row.claim:])
+			d.compareRow(row, rec.Batch.ID, &c, &ours)
 		}
 	}
 }
 
-func (d *draft) compareRow(line int, batch string, c *claim, ours *figures) {
+// hold refuses a row. One that could not be corrected may be told as such, or kept.
+func (d *draft) hold(i int, h *journal.Hold) {
+	row := &d.p.rows[i]
+	if h.Code == journal.HoldUncorrected && (row.failed || row.body.(journal.Reading).Keep != "") {
+		return
+	}
+	d.fate[i] = refused
+	why := h.Text
+	if h.Code == journal.HoldRise {
+		why += "; status " + statusSuspect + " with a " + colReason + " keeps it"
+	}
+	d.report.refuse(int(row.line), why)
+}
+
+func (d *draft) compareRow(row *planned, batch string, c *claim, ours *figures) {
+	line := int(row.line)
+	unsure := row.unsure()
 	for i := range figureColumns {
-		if c.places[i] == absent || ours.known[i] && !c.differs(i, ours.value[i]) {
+		if c.places[i] == absent || ours.known[i] && !c.differs(i, ours.value[i], unsure) {
 			continue
 		}
 		d.report.DiffersCount++
@@ -116,4 +140,17 @@ func (d *draft) compareRow(line int, batch string, c *claim, ours *figures) {
 		}
 		d.report.differ(Difference{line, batch, figureColumns[i].name, c.text(i), ours.text(i)})
 	}
+}
+
+// unsure is what our own table leaves open of a temperature [°C]: one typed in °F
+// is rounded in it.
+func (p *planned) unsure() float64 {
+	if !p.own {
+		return 0
+	}
+	t, err := p.body.(journal.Reading).Temp.Temperature()
+	if err != nil || t.Typed.Places() < finer {
+		return 0
+	}
+	return math.Pow10(-t.Typed.Places()) / 2
 }

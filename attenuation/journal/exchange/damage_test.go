@@ -16,9 +16,9 @@ func TestSpreadsheetDamage(t *testing.T) {
 	s := cellar(t)
 	file := "\ufeffbatch_id;taken_at;entered_text;entered_scale;sample_temp_c;sg_20_20\r\n" +
 		"B-1;2026-06-02T08:00:00+02:00;1048;sg;20,0;1048\r\n" +
-		"B-1;2026-06-03T08:00:00+02:00;996,0;;20,0;\r\n" +
+		"B-1;2026-06-06T08:00:00+02:00;996,0;;20,0;\r\n" +
 		"B-1;2026-06-04T08:00:00+02:00;1,0120;sg;20,0;1,012000\r\n" +
-		"B-1;2026-06-05T08:00:00+02:00;48;sg;20,0;\r\n"
+		"B-1;2026-06-01T08:00:00+02:00;49;sg;20,0;\r\n"
 	report, err := take(s, file, exchange.Options{})
 	if err != nil {
 		t.Fatal(err, report.Refused)
@@ -39,8 +39,8 @@ func TestSpreadsheetDamage(t *testing.T) {
 	for _, r := range rec.Readings {
 		got = append(got, r.Body.Gravity.Text)
 	}
-	// 48 is points as typed, and no damage.
-	if want := []string{"1.048", "0.996", "1.0120", "48"}; !reflect.DeepEqual(got, want) {
+	// 49 is points as typed, and no damage.
+	if want := []string{"49", "1.048", "1.0120", "0.996"}; !reflect.DeepEqual(got, want) {
 		t.Errorf("%q, wanted %q", got, want)
 	}
 	if d := report.Dialect; d.Comma != ';' || d.Decimal != ',' || !d.BOM || !d.CRLF {
@@ -158,5 +158,67 @@ func TestDifferencesWithReplicatesInTheJournal(t *testing.T) {
 	report, err := take(s, file, exchange.Options{})
 	if err != nil || report.DiffersCount != 0 {
 		t.Errorf("%+v, %v, wanted the mean of 1.020 and 1.022", report.Differences, err)
+	}
+}
+
+// In an export of ours 1048 is what was typed, unless the derived figure of the row
+// has lost its point too.
+func TestOwnWholeNumbers(t *testing.T) {
+	from := newJournals(t).empty()
+	first := og("B-1", "1050", "sg")
+	appendAll(t, from, batch("B-1", "T1"), first, reading("B-1", 24, "1048", "sg", "20"), reading("B-1", 48, "999", "sg", "20"))
+	for _, p := range exchange.Profiles() {
+		file := readings(t, from, p)
+		to := newJournals(t).empty()
+		report, err := take(to, file, exchange.Options{Create: true})
+		if err != nil || report.RepairCount != 0 || report.DiffersCount != 0 {
+			t.Fatalf("%s: %+v, %v", p, report, err)
+		}
+		rec, err := to.Batch(t.Context(), "B-1")
+		if err != nil {
+			t.Fatal(err)
+		}
+		if got := []string{rec.OGs[0].Body.Gravity.Text, rec.Readings[0].Body.Gravity.Text, rec.Readings[1].Body.Gravity.Text}; !reflect.DeepEqual(got, []string{"1050", "1048", "999"}) {
+			t.Errorf("%s: %q", p, got)
+		}
+		if again := readings(t, to, p); figuresOnly(again) != figuresOnly(file) {
+			t.Errorf("%s: %s\nfrom\n%s", p, again, file)
+		}
+		// A spreadsheet took the point of 1.048000 for a mark between thousands.
+		report, err = take(newJournals(t).empty(), strings.NewReplacer("1,048000", "1048000", "1.048000", "1048000").Replace(file), exchange.Options{Create: true, DryRun: true})
+		if err != nil || report.RepairCount != 1 || report.Repairs[0].As != "1.048" {
+			t.Errorf("%s: %+v, %v", p, report.Repairs, err)
+		}
+	}
+}
+
+// figuresOnly drops the first column, the number of the entry.
+func figuresOnly(table string) string {
+	var out []string
+	for _, line := range strings.Split(table, "\r\n") {
+		out = append(out, strings.TrimLeft(line, "0123456789"))
+	}
+	return strings.Join(out, "\n")
+}
+
+// 64 °F is (64 − 32)/1.8 = 17.777… °C, 64.5 °F 18.0555… °C: two decimals more than
+// were typed. What is cut off shows in no figure.
+func TestFahrenheit(t *testing.T) {
+	from := newJournals(t).empty()
+	one, two := reading("B-1", 24, "1.0480", "sg", "64"), reading("B-1", 48, "1.0310", "sg", "64.5")
+	one.Temp.Unit, two.Temp.Unit = "F", "F"
+	first := og("B-1", "1.0500", "sg")
+	first.Temp = journal.TypedTemp{Text: "64", Unit: "F"}
+	appendAll(t, from, batch("B-1", "T1"), first, one, two)
+	file := readings(t, from, exchange.Standard)
+	for _, cell := range []string{",17.78,", ",18.056,", ",1.0500 at 17.78C,"} {
+		if !strings.Contains(file, cell) {
+			t.Errorf("%s\nlacks %s", file, cell)
+		}
+	}
+	to := newJournals(t).empty()
+	report, err := take(to, file, exchange.Options{Create: true})
+	if err != nil || report.DiffersCount != 0 {
+		t.Fatalf("%+v, %v", report.Differences, err)
 	}
 }

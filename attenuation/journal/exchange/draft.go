@@ -6,7 +6,6 @@ import (
 	"fmt"
 	"slices"
 	"strings"
-	"time"
 
 	"gylebook/attenuation/journal"
 )
@@ -22,27 +21,17 @@ type draft struct {
 	batches map[string]*target
 	order   []string            // of batches, as they appear
 	vessels map[string][]string // open batches
-	seen    map[key]struct{}
+	fate    []fate              // of the rows
 	out     []journal.Body
 	used    []string // ids of batches, also void ones
+	made    []string // ids of batches
 }
 
 // target is a batch that readings go to.
 type target struct {
-	number int
-	why    string // it cannot take readings
-	made   bool
-	rows   []int32
-}
-
-// key is what makes a row a repeat of another. Void readings are repeats of void
-// ones only.
-type key struct {
-	batch  int
-	minute int64
-	value  float64
-	scale  int8
-	void   bool
+	why  string // it cannot take readings
+	made bool
+	rows []int32
 }
 
 func newDraft(p *plan, r journal.Reader) *draft {
@@ -50,7 +39,7 @@ func newDraft(p *plan, r journal.Reader) *draft {
 	report.Refused, report.Notes = slices.Clone(report.Refused), slices.Clone(report.Notes)
 	return &draft{
 		p: p, r: r, report: report,
-		tools: make(map[string]string), batches: make(map[string]*target), seen: make(map[key]struct{}, len(p.rows)),
+		tools: make(map[string]string), batches: make(map[string]*target), fate: make([]fate, len(p.rows)),
 	}
 }
 
@@ -69,17 +58,22 @@ func (d *draft) bodies(ctx context.Context) ([]journal.Body, error) {
 			return nil, err
 		}
 	}
-	numbers := make([]int64, len(d.p.rows)) // of the entries; 0: none
+	if err := d.settle(ctx); err != nil {
+		return nil, err
+	}
 	for i := range d.p.rows {
 		if i&1023 == 0 && ctx.Err() != nil {
 			return nil, ctx.Err()
 		}
-		if numbers[i], err = d.row(ctx, i); err != nil {
+		if err := d.row(ctx, i); err != nil {
 			return nil, err
 		}
 	}
-	if err := d.compare(ctx, numbers); err != nil {
+	if err := d.judge(ctx); err != nil {
 		return nil, err
+	}
+	for i := range d.p.rows {
+		d.write(i)
 	}
 	if err := d.report.err(); err != nil {
 		return nil, err
@@ -95,7 +89,7 @@ func (d *draft) target(ctx context.Context, id string) (*target, error) {
 	if t := d.batches[id]; t != nil {
 		return t, nil
 	}
-	t := &target{number: len(d.batches)}
+	t := new(target)
 	d.batches[id] = t
 	d.order = append(d.order, id)
 	rec, err := d.r.Batch(ctx, id)
@@ -106,11 +100,6 @@ func (d *draft) target(ctx context.Context, id string) (*target, error) {
 		return nil, err
 	case rec.Closed != nil:
 		t.why = fmt.Sprintf("batch %s is %v", id, journal.ErrClosed)
-	}
-	for _, n := range rec.Readings {
-		if k, ok := keyOf(t, n.Body, n.Void); ok {
-			d.seen[k] = struct{}{}
-		}
 	}
 	return t, nil
 }
@@ -129,6 +118,9 @@ func (d *draft) makeBatch(ctx context.Context, id string, t *target) error {
 		return nil
 	case !d.p.opt.Create || f == nil:
 		t.why = fmt.Sprintf("batch %s is %v%s", id, journal.ErrNotFound, nearest(id, d.used))
+		if !d.p.opt.Create {
+			d.report.Lacks = true
+		}
 		return nil
 	}
 	for _, c := range f.conflicts {
@@ -151,10 +143,7 @@ func (d *draft) makeBatch(ctx context.Context, id string, t *target) error {
 	}
 	t.made = true
 	d.report.Batches = append(d.report.Batches, id)
-	d.out = append(d.out, f.body)
-	for _, g := range f.ogs {
-		d.out = append(d.out, g)
-	}
+	d.made = append(d.made, id)
 	return nil
 }
 
@@ -166,18 +155,27 @@ func nearest(id string, ids []string) string {
 	return "; nearest: " + strings.Join(near, ", ")
 }
 
-// row accepts or refuses one row and returns the number of its entry.
-func (d *draft) row(ctx context.Context, i int) (int64, error) {
+// fate is what becomes of a row.
+type fate uint8
+
+const (
+	refused fate = iota
+	repeated
+	accepted
+)
+
+// row refuses one row or hands it to its batch.
+func (d *draft) row(ctx context.Context, i int) error {
 	p := &d.p.rows[i]
 	r := p.body.(journal.Reading)
-	refuse := func(why string) (int64, error) {
+	refuse := func(why string) error {
 		d.report.refuse(int(p.line), why)
-		return 0, nil
+		return nil
 	}
 	if r.Batch == "" {
 		id, why, err := d.inVessel(ctx, r.Vessel)
 		if err != nil {
-			return 0, err
+			return err
 		}
 		if why != "" {
 			return refuse(why)
@@ -187,7 +185,7 @@ func (d *draft) row(ctx context.Context, i int) (int64, error) {
 	}
 	t, err := d.target(ctx, r.Batch)
 	if err != nil {
-		return 0, err
+		return err
 	}
 	if t.why != "" {
 		return refuse(t.why)
@@ -198,39 +196,27 @@ func (d *draft) row(ctx context.Context, i int) (int64, error) {
 	if err := r.Check(); err != nil {
 		return refuse(err.Error())
 	}
-	reason, void := d.p.reasons[i]
-	k, ok := keyOf(t, r, void)
-	if _, repeat := d.seen[k]; ok && repeat {
-		d.report.Repeats++
-		return 0, nil
-	}
-	d.seen[k] = struct{}{}
-	d.out = append(d.out, p.body)
-	d.report.Readings++
-	number := d.last()
-	if void {
-		v := journal.Void{Entry: number, Reason: reason}
-		if err := v.Check(); err != nil {
+	if reason, void := d.p.reasons[i]; void {
+		if err := (journal.Void{Entry: 1, Reason: reason}).Check(); err != nil {
 			return refuse(err.Error())
 		}
-		d.out = append(d.out, v)
-		d.report.Voids++
 	}
-	if len(d.p.claims) > 0 {
-		t.rows = append(t.rows, int32(i))
-	}
-	return number, nil
+	d.fate[i] = accepted
+	t.rows = append(t.rows, int32(i))
+	return nil
 }
 
-func keyOf(t *target, r journal.Reading, void bool) (key, bool) {
-	g, err := r.Gravity.Reading()
-	if err != nil {
-		return key{}, false
+// write appends the entries of an accepted row.
+func (d *draft) write(i int) {
+	switch d.fate[i] {
+	case repeated:
+		d.report.Repeats++
+	case accepted:
+		d.out = append(d.out, d.p.rows[i].body)
+		d.report.Readings++
+		if reason, void := d.p.reasons[i]; void {
+			d.out = append(d.out, journal.Void{Entry: d.last(), Reason: reason})
+			d.report.Voids++
+		}
 	}
-	return key{t.number, floorMinute(r.TakenAt), g.Value, int8(g.Scale), void}, true
-}
-
-func floorMinute(t time.Time) int64 {
-	s := t.Unix()
-	return (s - ((s%60)+60)%60) / 60
 }

@@ -12,8 +12,10 @@ import (
 // facts are what the file says about one batch.
 type facts struct {
 	text      Facts
+	own       bool // written by this program
 	vessel    string
 	first     time.Time // earliest reading
+	last      time.Time
 	conflicts []Refusal // rows that say otherwise; they matter when the batch is to be made
 	more      int       // conflicts beyond MaxListed
 	body      journal.Batch
@@ -27,12 +29,15 @@ func (p *plan) addFacts(row *Row, r journal.Reading) {
 	}
 	f := p.batches[r.Batch]
 	if f == nil {
-		f = &facts{first: r.TakenAt}
+		f = &facts{first: r.TakenAt, last: r.TakenAt, own: row.own}
 		p.batches[r.Batch] = f
 		p.order = append(p.order, r.Batch)
 	}
 	if r.TakenAt.Before(f.first) {
 		f.first = r.TakenAt
+	}
+	if r.TakenAt.After(f.last) {
+		f.last = r.TakenAt
 	}
 	if f.vessel == "" {
 		f.vessel = r.Vessel
@@ -52,7 +57,7 @@ func (p *plan) addFacts(row *Row, r journal.Reading) {
 		case *c.had == "":
 			*c.had = strings.Clone(*c.says)
 		case len(f.conflicts) < MaxListed:
-			f.conflicts = append(f.conflicts, Refusal{row.Line, fmt.Sprintf("%s: read %.60q, but %.60q before for batch %s", c.name, *c.says, *c.had, r.Batch)})
+			f.conflicts = append(f.conflicts, Refusal{row.Line, fmt.Sprintf("%s: read %.60q, but %.60q before for batch %s", c.name, *c.says, *c.had, r.Batch), 1})
 		default:
 			f.more++
 		}
@@ -83,7 +88,7 @@ func (f *facts) parse(id string, loc *time.Location) error {
 		return err
 	}
 	var err error
-	if f.ogs, err = parseOG(f.text.OG); err != nil {
+	if f.ogs, err = parseOG(f.text.OG, f.own); err != nil {
 		return err
 	}
 	for i := range f.ogs {

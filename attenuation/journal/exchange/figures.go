@@ -8,22 +8,26 @@ import (
 )
 
 // figureColumns are the columns that follow from what was typed, with the decimals
-// they are written to: two beyond what a glass can tell.
+// they are written to: two beyond what a glass can tell. perDegree is the most that
+// a figure changes with a degree of the samples of the reading and of the original
+// gravity: water and ferments expand by less than 0.0005 a degree up to 40 °C (OIML
+// R 22), 0.01 SG is some 2.6 % mass, and the attenuations are of 5 % mass or more.
 var figureColumns = [...]struct {
-	name   string
-	places int
+	name      string
+	places    int
+	perDegree float64
 }{
-	{"meniscus_correction_sg", 6},
-	{"instrument_correction_sg", 6},
-	{"temperature_correction_sg", 6},
-	{"sg_20_20", 6},
-	{"sg_expanded_uncertainty_k2", 6},
-	{"apparent_extract_pct_mass", 4},
-	{"original_extract_pct_mass", 4},
-	{"real_extract_pct_mass", 4},
-	{"apparent_attenuation_pct", 3},
-	{"real_attenuation_pct", 3},
-	{"abv_pct_20c", 3},
+	{"meniscus_correction_sg", 6, 0},
+	{"instrument_correction_sg", 6, 0},
+	{"temperature_correction_sg", 6, 0.0005},
+	{"sg_20_20", 6, 0.0005},
+	{"sg_expanded_uncertainty_k2", 6, 0.00001},
+	{"apparent_extract_pct_mass", 4, 0.13},
+	{"original_extract_pct_mass", 4, 0.13},
+	{"real_extract_pct_mass", 4, 0.13},
+	{"apparent_attenuation_pct", 3, 5},
+	{"real_attenuation_pct", 3, 5},
+	{"abv_pct_20c", 3, 0.15},
 }
 
 // Places in figureColumns.

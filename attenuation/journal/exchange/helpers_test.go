@@ -147,6 +147,7 @@ func aJournal(t *rapid.T, s journal.Store) {
 			}
 			bodies = append(bodies, g)
 		}
+		fall := 0
 		for range rapid.IntRange(0, 6).Draw(t, "readings") {
 			k := rapid.IntRange(0, 2).Draw(t, "scale")
 			r := reading(id, 1, rapid.SampledFrom(typed[scales[k]]).Draw(t, "text"), scales[k], "")
@@ -159,7 +160,16 @@ func aJournal(t *rapid.T, s journal.Store) {
 			if rapid.Bool().Draw(t, "estimated") {
 				r.Quality = journal.Estimated
 			}
-			if rapid.IntRange(0, 3).Draw(t, "keep") == 0 {
+			// What may rise over a reading before it is kept, or it would not come in:
+			// falling values at one temperature, one a day.
+			falling := rapid.Bool().Draw(t, "falling")
+			if falling {
+				fall++
+				r.Gravity = journal.Typed{Text: []string{"1048", "1.0380", "1,028", "18", "1.0080", "999"}[fall-1], Scale: "sg"}
+				r.TakenAt = day0.Add(time.Duration(fall) * 24 * time.Hour)
+				r.Instrument, r.Temp.Text = "", "18.0"
+			}
+			if !falling || rapid.IntRange(0, 3).Draw(t, "keep") == 0 {
 				r.Keep = rapid.SampledFrom(texts).Draw(t, "reason")
 			}
 			bodies = append(bodies, r)

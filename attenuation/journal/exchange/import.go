@@ -4,6 +4,8 @@ import (
 	"context"
 	"errors"
 	"io"
+	"math"
+	"slices"
 	"strings"
 	"time"
 
@@ -25,12 +27,17 @@ type Options struct {
 // such, and a row with the batch, the minute and the value of another is passed over.
 // Batches and instruments must be in the journal; with Create they are made: an
 // instrument as glass on 20/20 in the scale of its readings, with the division that
-// most of them were typed to.
+// most of them were typed to. Of batches that are made in one vessel the newest has
+// it, and none when an open batch of the journal is in it; the report says so.
+//
+// A row is refused, besides, when it was taken before the pitching, is beyond the
+// range of its instrument or cannot be corrected, and when it rises over the reading
+// before it with nothing added, unless its status says that it was kept.
 //
 // When rows are refused the error is ErrRefused and the report names them. Other
 // errors: those of ReadReadings and of Store.Append. Whatever the error, nothing was
-// written. In memory are the entries to be and the file's derived figures, some 450
-// bytes a row (at the peak twice that, before the collector runs); the text is not.
+// written. In memory are the entries to be and the digits of the file's derived
+// figures, packed; the text is not.
 func Import(ctx context.Context, store journal.Store, by string, now time.Time, file io.Reader, opt Options) (Report, error) {
 	p, err := read(ctx, store, by, now, file, opt)
 	if err != nil {
@@ -61,7 +68,7 @@ type plan struct {
 	now     time.Time
 	opt     Options
 	rows    []planned
-	claims  []claim
+	claims  []byte         // packed
 	reasons map[int]string // of void rows, by place in rows
 	batches map[string]*facts
 	order   []string // batches as they appear
@@ -73,9 +80,11 @@ type plan struct {
 
 // planned is one row. Its body is boxed once and goes into the journal as it is.
 type planned struct {
-	body  journal.Body // a journal.Reading
-	line  int32
-	claim int32 // place in claims, -1: none
+	body   journal.Body // a journal.Reading
+	line   int32
+	claim  int32 // place in claims, -1: none
+	own    bool  // written by this program
+	failed bool  // status says that it could not be corrected
 }
 
 func read(ctx context.Context, store journal.Reader, by string, now time.Time, file io.Reader, opt Options) (*plan, error) {
@@ -109,6 +118,7 @@ func read(ctx context.Context, store journal.Reader, by string, now time.Time, f
 		}
 	}
 	p.report.Dialect, p.report.Notes, p.texts = in.Dialect, in.Notes, nil
+	p.rows, p.claims = slices.Clip(p.rows), slices.Clip(p.claims)
 	return p, nil
 }
 
@@ -134,11 +144,12 @@ func (p *plan) add(row *Row) {
 	} {
 		*s = p.intern(*s)
 	}
-	kept := planned{body: r, line: int32(row.Line), claim: -1}
-	if c, some := claimOf(row); some {
+	kept := planned{line: int32(row.Line), claim: -1, own: row.own, failed: row.failed}
+	if c, some := claimOf(row); some && len(p.claims) < math.MaxInt32 {
 		kept.claim = int32(len(p.claims))
-		p.claims = append(p.claims, c)
+		p.claims = c.pack(p.claims)
 	}
+	kept.body = r
 	p.addFacts(row, r)
 	p.addUse(r)
 	if row.Void {

@@ -7,6 +7,7 @@ import (
 	"io"
 	"os"
 	"reflect"
+	"slices"
 	"strings"
 	"testing"
 	"time"
@@ -97,6 +98,8 @@ func TestImportRefusesRows(t *testing.T) {
 		{"unknown status", "B-1,2026-06-02T08:00:00Z,1.020,sg,20,perhaps,\n", `status: read "perhaps"`},
 		{"void without a reason", "B-1,2026-06-02T08:00:00Z,1.020,sg,20,void,\n", "without a reason"},
 		{"a cell too few", "B-1,2026-06-02T08:00:00Z,1.020,sg,20,\n", "6 fields, wanted 7"},
+		{"a rise of 2 points", "B-1,2026-06-02T08:01:00Z,1.022,sg,20,,\n", "2.0 points over the reading before it"},
+		{"before pitching", "B-1,2026-05-31T08:00:00Z,1.050,sg,20,,\n", "wanted a time after pitching"},
 		{"a reason too long", "B-1,2026-06-02T08:00:00Z,1.020,sg,20,void," + strings.Repeat("x", 1001) + "\n", "at most 1000"},
 	} {
 		t.Run(c.name, func(t *testing.T) {
@@ -227,7 +230,7 @@ func TestOneBadRowInTenThousand(t *testing.T) {
 	if report.Rows != 10_000 || entries(t, s) != before {
 		t.Errorf("%d rows read, %d entries, wanted 10000 and %d", report.Rows, entries(t, s), before)
 	}
-	report, err = take(s, strings.Replace(b.String(), "1.48", "1.048", 1), exchange.Options{})
+	report, err = take(s, strings.Replace(b.String(), "1.48", "1.020", 1), exchange.Options{})
 	if err != nil || report.Readings != 10_000 || entries(t, s) != before+10_000 {
 		t.Fatalf("put right: %+v, %v", report, err)
 	}
@@ -236,7 +239,16 @@ func TestOneBadRowInTenThousand(t *testing.T) {
 func TestRefusalsAreCounted(t *testing.T) {
 	file := head + strings.Repeat("B-0,2026-06-02T08:00:00Z,1.020,sg,20,,\n", 70) + "B-1,2026-06-02T08:00:00Z,x,sg,20,,\n"
 	report, err := take(cellar(t), file, exchange.Options{})
-	if !errors.Is(err, exchange.ErrRefused) || report.RefusedCount != 71 || len(report.Refused) != exchange.MaxListed {
+	want := []exchange.Refusal{{Line: 2, Reason: report.Refused[0].Reason, Rows: 70}, {Line: 72, Reason: report.Refused[1].Reason, Rows: 1}}
+	if !errors.Is(err, exchange.ErrRefused) || report.RefusedCount != 71 || !report.Lacks || !slices.Equal(report.Refused, want) {
+		t.Fatalf("%v, %+v, wanted 70 rows as one reason", err, report.Refused)
+	}
+	file = head
+	for i := range exchange.MaxListed + 20 {
+		file += fmt.Sprintf("B-1,2026-06-02T08:00:00Z,x%d,sg,20,,\n", i)
+	}
+	report, err = take(cellar(t), file, exchange.Options{})
+	if !errors.Is(err, exchange.ErrRefused) || report.RefusedCount != exchange.MaxListed+20 || len(report.Refused) != exchange.MaxListed {
 		t.Fatalf("%v, %d listed", err, len(report.Refused))
 	}
 	// Line 72 was found first, when the file was read; the journal refused lines 2 to 71.

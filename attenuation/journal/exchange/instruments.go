@@ -96,6 +96,7 @@ func (d *draft) instrument(id string, u *use) string {
 			known = append(known, i.Instrument.ID)
 		}
 		d.tools[id] = fmt.Sprintf("instrument %s is %v%s", id, journal.ErrNotFound, nearest(id, known))
+		d.report.Lacks = true
 		return d.tools[id]
 	}
 	body, err := u.body(id)

@@ -18,14 +18,20 @@ import (
 const MaxLine = 1 << 20
 
 // WriteLines writes every entry of the journal, one a line, and returns how many.
-// The error is that of r or of w.
+// Each is verified on the way: a copy of a damaged journal would pass for a good
+// one. The error is journal.ErrTampered, that of r or of w.
 func WriteLines(ctx context.Context, w io.Writer, r journal.Reader) (int64, error) {
 	out := bufio.NewWriterSize(w, 64<<10)
 	var n int64
+	chain := ""
 	for e, err := range r.Entries(ctx) {
 		if err != nil {
 			return n, err
 		}
+		if err := e.Verify(chain); err != nil {
+			return n, err
+		}
+		chain = e.Chain
 		line, err := json.Marshal(e)
 		if err != nil {
 			return n, err

@@ -38,8 +38,9 @@ func ogText(ogs []journal.Numbered[journal.OG], mark rune) string {
 	return strings.Join(parts, ogSep)
 }
 
-// parseOG reads og_text; batch and time are left to the caller.
-func parseOG(text string) ([]journal.OG, error) {
+// parseOG reads og_text; batch and time are left to the caller. In a file of
+// another hand 1048 is taken for a damaged 1.048, in ours it was typed.
+func parseOG(text string, own bool) ([]journal.OG, error) {
 	var out []journal.OG
 	for _, part := range strings.Split(text, strings.TrimSpace(ogSep)) {
 		part = strings.TrimSpace(part)
@@ -48,7 +49,10 @@ func parseOG(text string) ([]journal.OG, error) {
 		}
 		part, instrument, _ := strings.Cut(part, ogWith)
 		value, temp, _ := strings.Cut(part, ogAt)
-		value, _ = thousandths(withMark(strings.TrimSpace(value), '.'))
+		value = withMark(strings.TrimSpace(value), '.')
+		if !own {
+			value, _ = thousandths(value)
+		}
 		meant, err := asread.ParseReading(value, gravity.ScaleSG)
 		if err != nil {
 			return nil, fmt.Errorf("%s: %w", colOG, err)

@@ -1,8 +1,10 @@
 package exchange
 
 import (
+	"cmp"
 	"context"
 	"io"
+	"slices"
 	"strconv"
 	"time"
 
@@ -31,25 +33,62 @@ func WriteReadings(ctx context.Context, w io.Writer, r journal.Reader, p Profile
 		if err != nil {
 			return err
 		}
-		writeBatch(out, rec, book)
-		if out.err != nil {
-			return out.err
+		if err := writeBatch(ctx, out, rec, book); err != nil {
+			return err
 		}
 	}
 	return out.flush()
 }
 
-func writeBatch(out *cells, rec *journal.Record, book *journal.Book) {
-	view := journal.Derive(rec, book)
+// writeBatch derives a few readings at a time, so that a batch of any length takes
+// little memory.
+func writeBatch(ctx context.Context, out *cells, rec *journal.Record, book *journal.Book) error {
 	b := batchCells(rec, out.d.Decimal)
-	for i := range view.Values {
-		v := &view.Values[i]
-		writeValue(out, v, view, book)
-		for _, cell := range b {
-			out.text(cell)
+	all := inTime(rec.Readings)
+	some := *rec
+	some.Batch.Pitched = begun(rec, all)
+	for len(all) > 0 && out.err == nil {
+		if err := ctx.Err(); err != nil {
+			return err
 		}
-		out.end()
+		n := minuteEnd(all, atOnce)
+		some.Readings, all = all[:n], all[n:]
+		view := journal.Derive(&some, book)
+		for i := range view.Values {
+			writeValue(out, &view.Values[i], view, book)
+			for _, cell := range b {
+				out.text(cell)
+			}
+			out.end()
+		}
 	}
+	return out.err
+}
+
+// begun is when the batch was pitched: as entered, else its first reading that is
+// not void.
+func begun(rec *journal.Record, all []numbered) *time.Time {
+	if rec.Batch.Pitched != nil {
+		return rec.Batch.Pitched
+	}
+	for i := range all {
+		if !all[i].Void {
+			return &all[i].Body.TakenAt
+		}
+	}
+	return nil
+}
+
+// inTime returns readings in the order of their time, then of their number.
+func inTime(list []numbered) []numbered {
+	byTime := func(a, b numbered) int {
+		return cmp.Or(a.Body.TakenAt.Compare(b.Body.TakenAt), cmp.Compare(a.Number, b.Number))
+	}
+	if !slices.IsSortedFunc(list, byTime) {
+		list = slices.Clone(list)
+		slices.SortFunc(list, byTime)
+	}
+	return list
 }
 
 // batchCells are the last four columns, the same for every reading of a batch.
@@ -115,6 +154,9 @@ func state(v *journal.Value) (status, reason string) {
 	return statusOK, v.Why
 }
 
+// finer is how many decimals more a temperature typed in °F has in °C.
+const finer = 2
+
 func yesNo(yes bool) string {
 	if yes {
 		return "yes"
@@ -125,7 +167,8 @@ func yesNo(yes bool) string {
 func stamp(t time.Time) string { return t.Format(time.RFC3339Nano) }
 
 // celsiusText returns the digits of a temperature typed in °C, and otherwise the
-// temperature in °C to every digit.
+// temperature in °C with two decimals more than were typed, by which the one typed
+// can be told: a step of 1 °F is 0.56 °C.
 func celsiusText(t journal.TypedTemp) string {
 	v, err := t.Temperature()
 	if err != nil {
@@ -134,5 +177,5 @@ func celsiusText(t journal.TypedTemp) string {
 	if v.Unit == string(asread.C) {
 		return v.Typed.String()
 	}
-	return strconv.FormatFloat(float64(v.C), 'f', -1, 64)
+	return asread.Fixed(float64(v.C), v.Typed.Places()+finer, asread.HalfEven)
 }

@@ -2,7 +2,6 @@ package exchange
 
 import (
 	"fmt"
-	"math"
 	"strings"
 
 	"gylebook/attenuation/journal"
@@ -12,8 +11,8 @@ import (
 )
 
 // gravity takes the typed reading and its scale, and puts right a 1048 that was
-// 1.048.
-func (rs *Rows) gravity(row *Row, cell, scaleCell string) error {
+// 1.048. damaged tells whether a whole number may be such damage.
+func (rs *Rows) gravity(row *Row, cell, scaleCell string, damaged bool) error {
 	if err := rs.sameMark(cell); err != nil {
 		return err
 	}
@@ -29,7 +28,7 @@ func (rs *Rows) gravity(row *Row, cell, scaleCell string) error {
 		}
 	}
 	text := withMark(cell, '.')
-	if scale == gravity.ScaleSG {
+	if scale == gravity.ScaleSG && damaged {
 		if whole, ok := thousandths(text); ok {
 			row.Repairs = append(row.Repairs, Repair{row.Line, colText, cell, whole})
 			text = whole
@@ -45,6 +44,20 @@ func (rs *Rows) gravity(row *Row, cell, scaleCell string) error {
 	}
 	row.Reading.Gravity = journal.Typed{Text: text, Scale: scale.String()}
 	return nil
+}
+
+// wholeSG is above every specific gravity that is written with its point.
+const wholeSG = 2
+
+// damaged reports whether a whole number in entered_text may have been one with a
+// point: in a file of another hand always, in an export of ours, where 1048 is what
+// was typed, when the point is gone from its sg_20_20 too.
+func damaged(schema, sg string) bool {
+	if schema == "" {
+		return true
+	}
+	v, err := asread.ParseNumber(withMark(sg, '.'))
+	return err == nil && v.Float() > wholeSG
 }
 
 // figures takes the derived columns, with the decimals they have in the file.
@@ -81,46 +94,4 @@ func (rs *Rows) figures(row *Row, fields []string) error {
 		row.places[i] = int8(v.Places())
 	}
 	return nil
-}
-
-// claim is what a file has in its derived columns for one reading, kept small: a
-// file may have a million of them.
-type claim struct {
-	value  [figCount]float64
-	places [figCount]int8 // or absent, noNumber
-}
-
-const (
-	absent   = -1
-	noNumber = -2
-)
-
-func claimOf(row *Row) (claim, bool) {
-	c, some := claim{value: row.claims.value, places: row.places}, false
-	for i, known := range row.claims.known {
-		if !known {
-			c.places[i] = absent
-		}
-		some = some || known
-	}
-	return c, some
-}
-
-// differs reports whether ours is more than one unit of the file's last digit, or of
-// our own where that is the coarser, away from the file's figure.
-func (c *claim) differs(i int, ours float64) bool {
-	if c.places[i] == noNumber {
-		return true
-	}
-	places := min(int(c.places[i]), figureColumns[i].places)
-	unit := math.Pow10(-places)
-	return !(math.Abs(c.value[i]-ours) <= unit*(1+1e-9))
-}
-
-// text returns the file's figure.
-func (c *claim) text(i int) string {
-	if c.places[i] == noNumber {
-		return "not a number"
-	}
-	return asread.Fixed(c.value[i], int(c.places[i]), asread.HalfEven)
 }

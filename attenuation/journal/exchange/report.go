@@ -12,14 +12,15 @@ import (
 // ErrRefused says that rows were refused and nothing was written.
 var ErrRefused = errors.New("nothing was written")
 
-// MaxListed is how many refused rows, repairs and differences a report names each;
+// MaxListed is how many reasons of refusal, repairs and differences a report names each;
 // the rest are counted.
 const MaxListed = 50
 
-// Refusal is a row that was refused.
+// Refusal is a reason for which rows were refused.
 type Refusal struct {
-	Line   int
+	Line   int // of the first
 	Reason string
+	Rows   int
 }
 
 // Difference is a derived figure that the file has otherwise than the journal.
@@ -42,8 +43,9 @@ type Report struct {
 	Instruments []string // made
 	First, Last int64    // entries written; 0 when none were
 
-	Refused      []Refusal // in order of line
-	RefusedCount int
+	Refused      []Refusal // in order of the first line
+	RefusedCount int       // rows
+	Lacks        bool      // rows were refused for a batch or an instrument that Create makes
 	Repairs      []Repair
 	RepairCount  int
 	Differences  []Difference // in order of line
@@ -52,7 +54,12 @@ type Report struct {
 
 func (r *Report) refuse(line int, reason string) {
 	r.RefusedCount++
-	r.Refused = keepFirst(r.Refused, Refusal{line, reason}, func(x Refusal) int { return x.Line })
+	one := Refusal{Line: line, Reason: reason, Rows: 1}
+	if i := slices.IndexFunc(r.Refused, func(x Refusal) bool { return x.Reason == reason }); i >= 0 {
+		one.Line, one.Rows = min(line, r.Refused[i].Line), r.Refused[i].Rows+1
+		r.Refused = slices.Delete(r.Refused, i, i+1)
+	}
+	r.Refused = keepFirst(r.Refused, one, func(x Refusal) int { return x.Line })
 }
 
 func (r *Report) repair(list []Repair) {

@@ -32,6 +32,8 @@ type Row struct {
 	Facts    Facts
 	Repairs  []Repair
 
+	own    bool // written by this program
+	failed bool // status says that it could not be corrected
 	claims figures
 	places [figCount]int8
 }
@@ -125,9 +127,11 @@ func (rs *Rows) parse(row *Row, fields []string) error {
 		return ""
 	}
 	cell := func(name string) string { return strings.TrimSpace(text(name)) }
-	if v := cell(colSchema); v != "" && v != Schema {
+	schema := cell(colSchema)
+	if v := schema; v != "" && v != Schema {
 		return fmt.Errorf("%s %.20q, wanted %s: written by a newer version?", colSchema, v, Schema)
 	}
+	row.own = schema != ""
 	r := &row.Reading
 	r.Batch, r.Vessel, r.Instrument = cell(colBatch), cell(colVessel), cell(colInstrument)
 	if r.Batch == "" && r.Vessel == "" {
@@ -149,7 +153,7 @@ func (rs *Rows) parse(row *Row, fields []string) error {
 		return fmt.Errorf("%s: %w", colDegassed, err)
 	}
 	r.Gassy, r.Note, row.Operator = !degassed, text(colNote), cell(colOperator)
-	if err := rs.gravity(row, cell(colText), cell(colScale)); err != nil {
+	if err := rs.gravity(row, cell(colText), cell(colScale), damaged(schema, cell(figureColumns[figSG].name))); err != nil {
 		return fmt.Errorf("%s: %w", colText, err)
 	}
 	if err := rs.temperature(row, cell(colTemp)); err != nil {
@@ -165,7 +169,10 @@ func (rs *Rows) parse(row *Row, fields []string) error {
 // status takes void and suspect readings as such.
 func (rs *Rows) status(row *Row, status, reason string) error {
 	switch status {
-	case "", statusOK, statusUncorrected:
+	case "", statusOK:
+		return nil
+	case statusUncorrected:
+		row.failed = true
 		return nil
 	case statusVoid, statusSuspect:
 	default:

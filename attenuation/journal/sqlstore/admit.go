@@ -5,6 +5,7 @@ import (
 	"database/sql"
 	"errors"
 	"fmt"
+	"time"
 
 	"gylebook/attenuation/journal"
 )
@@ -23,21 +24,23 @@ func (w *writer) check(ctx context.Context, e journal.Entry) error {
 	case journal.Instrument:
 		return w.unused(ctx, "instrument", w.instruments, instrumentState, b.ID)
 	case journal.Certificate:
-		return w.instrument(ctx, b.Instrument)
+		return w.instrument(ctx, b.Instrument, b.At)
 	case journal.Check:
-		return w.instrument(ctx, b.Instrument)
+		return w.instrument(ctx, b.Instrument, b.At)
 	case journal.Retire:
-		return w.instrument(ctx, b.Instrument)
+		return w.instrument(ctx, b.Instrument, always)
 	case journal.Batch:
 		return w.unused(ctx, "batch", w.batches, batchState, b.ID)
 	case journal.OG:
-		return firstOf(w.batch(ctx, b.Batch, false), func() error { return w.named(ctx, b.Instrument) })
+		return firstOf(w.batch(ctx, b.Batch, false), func() error { return w.named(ctx, b.Instrument, b.At) })
+	case journal.Volume:
+		return w.batch(ctx, b.Batch, true)
 	case journal.Limit:
 		return w.batch(ctx, b.Batch, true)
 	case journal.Close:
 		return w.batch(ctx, b.Batch, false)
 	case journal.Reading:
-		return firstOf(w.batch(ctx, b.Batch, false), func() error { return w.named(ctx, b.Instrument) })
+		return firstOf(w.batch(ctx, b.Batch, false), func() error { return w.named(ctx, b.Instrument, b.TakenAt) })
 	case journal.Event:
 		return w.batch(ctx, b.Batch, false)
 	case journal.Void:
@@ -61,16 +64,29 @@ func (w *writer) unused(ctx context.Context, what string, known map[string]state
 	return err
 }
 
-// named admits no instrument, or one that is in use.
-func (w *writer) named(ctx context.Context, id string) error {
+// named admits no instrument, or one that is in use at a time.
+func (w *writer) named(ctx context.Context, id string, at time.Time) error {
 	if id == "" {
 		return nil
 	}
-	return w.instrument(ctx, id)
+	return w.instrument(ctx, id, at)
 }
 
-func (w *writer) instrument(ctx context.Context, id string) error {
+// always is after every retirement.
+var always = time.Date(9999, 12, 31, 0, 0, 0, 0, time.UTC)
+
+const retiredFrom = `SELECT MIN(c.at_ms) FROM retirement c
+	WHERE c.instrument = ? AND NOT EXISTS (SELECT 1 FROM void_entry x WHERE x.entry = c.number)`
+
+// instrument admits one that is in use at a time, whether or not it is now.
+func (w *writer) instrument(ctx context.Context, id string, at time.Time) error {
 	st, err := w.lookUp(ctx, w.instruments, instrumentState, id)
+	if err == nil && st == ended {
+		var from int64
+		if err = w.v.one(ctx, retiredFrom, []any{id}, &from); err == nil && millisecond(at) < from {
+			st = inUse
+		}
+	}
 	switch {
 	case err != nil:
 		return err

@@ -122,7 +122,7 @@ func (s *Store) write(ctx context.Context, fn func(*view) (bool, error)) error {
 		return s.unwritten(ctx, err)
 	}
 	defer func() { _ = tx.Rollback() }()
-	v := newView(tx)
+	v := newView(tx, s.version)
 	defer v.over.Store(true)
 	commit, err := fn(v)
 	var draft drafted

@@ -20,7 +20,7 @@ const openByEntries = `SELECT b.id, b.vessel FROM batch b
 func (s *Store) Audit(ctx context.Context) (int, error) {
 	wrong := 0
 	err := s.view(ctx, func(v *view) error {
-		if err := checkMigrations(ctx, v.tx, migrations); err != nil {
+		if err := checkMigrations(ctx, v.tx, migrations, v.version); err != nil {
 			return err
 		}
 		var verdict string

@@ -59,19 +59,33 @@ func TestPlans(t *testing.T) {
 	s := openAt(t, filepath.Join(t.TempDir(), "journal"))
 	all, id := selectionOf(journal.Filter{}), byID
 	id.args = []any{"B-1"}
+	last := openOnes
+	last.last = 3
+	type query struct {
+		text string
+		args []any
+	}
+	of := func(text string, args []any) query { return query{text, args} }
 	for name, c := range map[string]struct {
 		sel  selection
 		scan string // the one table that may be read from end to end
-	}{"season": {all, "SCAN b USING"}, "open": {openOnes, "SCAN o USING"}, "one": {id, ""}} {
-		for _, query := range []string{
-			c.sel.batchSQL(), childSQL(c.sel, ogs), childSQL(c.sel, limits), childSQL(c.sel, readings), childSQL(c.sel, events), childSQL(c.sel, closes),
+	}{"season": {all, "SCAN b USING"}, "open": {openOnes, "SCAN o USING"}, "newest": {last, "SCAN o USING"}, "one": {id, ""}} {
+		for _, query := range []query{
+			of(c.sel.batchSQL(), c.sel.args), of(childSQL(c.sel, ogs)), of(childSQL(c.sel, limits)), of(childSQL(c.sel, readings)),
+			of(childSQL(c.sel, events)), of(childSQL(c.sel, given)), of(childSQL(c.sel, volumes)), of(childSQL(c.sel, closes)),
 		} {
-			for _, step := range plan(t, s, query, c.sel.args...) {
+			for _, step := range plan(t, s, query.text, query.args...) {
 				if strings.Contains(step, "TEMP B-TREE") || strings.HasPrefix(step, "SCAN") && (c.scan == "" || !strings.HasPrefix(step, c.scan)) {
-					t.Errorf("%s: %s in %s", name, step, query)
+					t.Errorf("%s: %s in %s", name, step, query.text)
 				}
 			}
 		}
+	}
+	bounded := slices.ContainsFunc(plan(t, s, of(childSQL(last, readings)).text, 2), func(step string) bool {
+		return strings.HasPrefix(step, "SEARCH c USING") && strings.Contains(step, "taken_ms>?")
+	})
+	if !bounded {
+		t.Error("the newest readings are not found by the key")
 	}
 	for _, query := range []string{batchState, instrumentState} {
 		for _, step := range plan(t, s, query, "X") {

@@ -52,6 +52,13 @@ var limits = table[journal.Limit]{
 	},
 }
 
+var volumes = table[journal.Volume]{
+	name:    "batch_volume",
+	columns: []string{"batch", "at", "at_ms", "volume_l"},
+	dest:    func(v *journal.Volume) []any { return []any{&v.Batch, stampOf{&v.At}, millis(&v.At), &v.Volume} },
+	args:    func(v *journal.Volume) []any { return []any{v.Batch, stamp(v.At), millisecond(v.At), v.Volume} },
+}
+
 var closes = table[journal.Close]{
 	name:    "batch_close",
 	columns: []string{"batch", "at", "at_ms", "note"},
@@ -102,3 +109,10 @@ var events = table[journal.Event]{
 		}
 	},
 }
+
+// given is events seen from the batch that was blended into others.
+var given = func() table[journal.Event] {
+	t := events
+	t.owner = "from_batch"
+	return t
+}()

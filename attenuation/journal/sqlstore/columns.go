@@ -14,6 +14,7 @@ type table[B journal.Body] struct {
 	columns []string
 	dest    func(*B) []any // where a row is scanned to
 	args    func(*B) []any // what is inserted
+	owner   string         // column of the batch that a row hangs on; "" is batch
 	copies  bool           // it holds the entry's recorded_at and operator too
 }
 

@@ -39,8 +39,8 @@ func TestCreate(t *testing.T) {
 		t.Fatalf("opened again: made %t, error %v", made, err)
 	}
 	defer s.Close()
-	if n, err := journal.VerifyAll(ctx, s); n != 12 || err != nil {
-		t.Errorf("%d entries verify, error %v, wanted 12", n, err)
+	if n, err := journal.VerifyAll(ctx, s); n != 13 || err != nil {
+		t.Errorf("%d entries verify, error %v, wanted 13", n, err)
 	}
 	if runtime.GOOS == "windows" {
 		return
@@ -55,7 +55,7 @@ func TestCreate(t *testing.T) {
 func TestSettings(t *testing.T) {
 	s := openAt(t, filepath.Join(t.TempDir(), "journal"))
 	for pragma, want := range map[string]string{
-		"journal_mode": "wal", "synchronous": "2", "foreign_keys": "1", "busy_timeout": "15000", "application_id": fmt.Sprint(applicationID), "user_version": "1",
+		"journal_mode": "wal", "synchronous": "2", "foreign_keys": "1", "busy_timeout": "15000", "application_id": fmt.Sprint(applicationID), "user_version": "2",
 	} {
 		var got string
 		if err := s.db.QueryRow("PRAGMA " + pragma).Scan(&got); err != nil || got != want {
@@ -99,7 +99,7 @@ func TestNewer(t *testing.T) {
 	if err := openAt(t, place).Close(); err != nil {
 		t.Fatal(err)
 	}
-	if _, err := raw(t, place).Exec("PRAGMA user_version = 2"); err != nil {
+	if _, err := raw(t, place).Exec("PRAGMA user_version = 3"); err != nil {
 		t.Fatal(err)
 	}
 	if _, err := Open(context.Background(), place); !errors.Is(err, journal.ErrNewer) {
@@ -185,24 +185,30 @@ func TestMigrate(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	two := mustList(fstest.MapFS{
+	second, err := migrations.step(2)
+	if err != nil {
+		t.Fatal(err)
+	}
+	three := mustList(fstest.MapFS{
 		first.name:                  {Data: []byte(first.text)},
-		"migrations/0002_later.sql": {Data: []byte("CREATE TABLE later (x INTEGER) STRICT; INSERT INTO later VALUES (1);")},
+		second.name:                 {Data: []byte(second.text)},
+		"migrations/0003_later.sql": {Data: []byte("CREATE TABLE later (x INTEGER) STRICT; INSERT INTO later VALUES (1);")},
 	})
 	broken := mustList(fstest.MapFS{
 		first.name:                  {Data: []byte(first.text)},
-		"migrations/0002_later.sql": {Data: []byte("CREATE TABLE later (x INTEGER) STRICT; INSERT INTO nowhere VALUES (1);")},
+		second.name:                 {Data: []byte(second.text)},
+		"migrations/0003_later.sql": {Data: []byte("CREATE TABLE later (x INTEGER) STRICT; INSERT INTO nowhere VALUES (1);")},
 	})
 	place := filepath.Join(t.TempDir(), "journal")
 	s := openAt(t, place)
 	everyKind(t, s)
-	if err := migrate(ctx, s.db, 1, broken); !errors.Is(err, journal.ErrNotWritten) {
+	if err := migrate(ctx, s.db, 2, broken); !errors.Is(err, journal.ErrNotWritten) {
 		t.Errorf("a broken step: %v, wanted %v", err, journal.ErrNotWritten)
 	}
 	var wg sync.WaitGroup
 	for range 8 { // each believes that it must
 		wg.Go(func() {
-			if err := migrate(ctx, s.db, 1, two); err != nil {
+			if err := migrate(ctx, s.db, 2, three); err != nil {
 				t.Error(err)
 			}
 		})
@@ -210,11 +216,11 @@ func TestMigrate(t *testing.T) {
 	wg.Wait()
 	var rows, steps, version int
 	err = s.db.QueryRow("SELECT (SELECT count(*) FROM later), (SELECT count(*) FROM migration), user_version FROM pragma_user_version").Scan(&rows, &steps, &version)
-	if err != nil || rows != 1 || steps != 2 || version != 2 {
-		t.Errorf("%d rows, %d steps, version %d, error %v, wanted 1, 2, 2", rows, steps, version, err)
+	if err != nil || rows != 1 || steps != 3 || version != 3 {
+		t.Errorf("%d rows, %d steps, version %d, error %v, wanted 1, 3, 3", rows, steps, version, err)
 	}
-	if n, err := journal.VerifyAll(ctx, s); n != 12 || err != nil {
-		t.Errorf("%d entries verify, error %v, wanted 12", n, err)
+	if n, err := journal.VerifyAll(ctx, s); n != 13 || err != nil {
+		t.Errorf("%d entries verify, error %v, wanted 13", n, err)
 	}
 	if err := s.Close(); err != nil {
 		t.Fatal(err)

@@ -89,6 +89,7 @@ var openers = map[journal.Kind]opener{
 	journal.KindBatch:   open(batches, nil),
 	journal.KindOG:      open(ogs, nil),
 	journal.KindLimit:   open(limits, nil),
+	journal.KindVolume:  open(volumes, nil),
 	journal.KindClose:   open(closes, nil),
 	journal.KindReading: open(readings, nil),
 	journal.KindEvent:   open(events, nil),
@@ -205,6 +206,9 @@ func (v *view) readerOf(ctx context.Context, kind journal.Kind, readers map[jour
 // leftOver names content that hangs on no entry.
 func (v *view) leftOver(ctx context.Context, readers map[journal.Kind]reader) error {
 	for kind := range openers {
+		if kind == journal.KindVolume && v.version < volumesFrom {
+			continue
+		}
 		r, err := v.readerOf(ctx, kind, readers)
 		if err != nil {
 			return err

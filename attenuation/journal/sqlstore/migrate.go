@@ -87,9 +87,13 @@ func migrateStep(ctx context.Context, db *sql.DB, version int, m migration) erro
 	return tx.Commit()
 }
 
-// checkMigrations compares what was recorded with what the program holds.
-func checkMigrations(ctx context.Context, tx *sql.Tx, from source) error {
-	for k := range from.names {
+// volumesFrom is the version of the schema from which batches have volumes.
+const volumesFrom = 2
+
+// checkMigrations compares what was recorded, up to a version, with what the program
+// holds.
+func checkMigrations(ctx context.Context, tx *sql.Tx, from source, version int) error {
+	for k := range from.names[:min(version, len(from.names))] {
 		m, err := from.step(k + 1)
 		if err != nil {
 			return err

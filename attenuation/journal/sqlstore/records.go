@@ -28,13 +28,14 @@ type child[B journal.Body] struct {
 }
 
 func newChild[B journal.Body](ctx context.Context, v *view, s selection, t table[B], at func(*B) time.Time) (*child[B], error) {
-	rows, err := v.query(ctx, childSQL(s, t), s.args...)
+	query, args := childSQL(s, t)
+	rows, err := v.query(ctx, query, args...)
 	if err != nil {
 		return nil, err
 	}
 	c := &child[B]{rows: rows, at: at, again: func(number int64) (journal.Entry, error) { return v.Entry(ctx, number) }}
 	body := t.dest(&c.ahead.Body)
-	c.id = body[0].(*string) // the batch comes first in each of these tables
+	c.id = body[max(0, slices.Index(t.columns, t.owner))].(*string) // the batch comes first in each of these tables
 	c.dest = append([]any{recordedOf{&c.ahead.RecordedAt}, &c.ahead.By}, body...)
 	c.next()
 	return c, nil
@@ -80,8 +81,10 @@ func (c *child[B]) take(id string) ([]journal.Numbered[B], error) {
 type children struct {
 	ogs      *child[journal.OG]
 	limits   *child[journal.Limit]
+	volumes  *child[journal.Volume] // nil in a journal that has none yet
 	readings *child[journal.Reading]
 	events   *child[journal.Event]
+	given    *child[journal.Event]
 	closes   *child[journal.Close]
 }
 
@@ -108,6 +111,16 @@ func newChildren(ctx context.Context, v *view, s selection) (c children, err err
 		return err
 	})
 	open(func() (err error) {
+		c.given, err = newChild(ctx, v, s, given, func(e *journal.Event) time.Time { return e.At })
+		return err
+	})
+	if v.version >= volumesFrom {
+		open(func() (err error) {
+			c.volumes, err = newChild(ctx, v, s, volumes, func(w *journal.Volume) time.Time { return w.At })
+			return err
+		})
+	}
+	open(func() (err error) {
 		c.closes, err = newChild(ctx, v, s, closes, func(c *journal.Close) time.Time { return c.At })
 		return err
 	})
@@ -127,6 +140,12 @@ func (c children) close() {
 	if c.events != nil {
 		_ = c.events.rows.Close()
 	}
+	if c.given != nil {
+		_ = c.given.rows.Close()
+	}
+	if c.volumes != nil {
+		_ = c.volumes.rows.Close()
+	}
 	if c.closes != nil {
 		_ = c.closes.rows.Close()
 	}
@@ -135,7 +154,7 @@ func (c children) close() {
 // fill takes what hangs on the record's batch.
 func (c children) fill(r *journal.Record) error {
 	id := r.Batch.ID
-	var errs [5]error
+	var errs [7]error
 	r.OGs, errs[0] = c.ogs.take(id)
 	r.Limits, errs[1] = c.limits.take(id)
 	r.Readings, errs[2] = c.readings.take(id)
@@ -146,6 +165,10 @@ func (c children) fill(r *journal.Record) error {
 		if !closed[k].Void {
 			r.Closed = &closed[k]
 		}
+	}
+	r.Given, errs[5] = c.given.take(id)
+	if c.volumes != nil {
+		r.Volumes, errs[6] = c.volumes.take(id)
 	}
 	return errors.Join(errs[:]...)
 }
@@ -161,8 +184,13 @@ func (v *view) records(ctx context.Context, s selection) iter.Seq2[*journal.Reco
 		}
 		var head journal.Record
 		dest := append([]any{&head.Number}, batches.dest(&head.Batch)...)
+		var reason sql.NullString
+		if s.void {
+			dest = append(dest, &reason)
+		}
 		err = v.each(ctx, s.batchSQL(), s.args, dest, func() error {
 			r := head
+			r.Void, r.VoidReason = reason.Valid, reason.String
 			if err := c.fill(&r); err != nil {
 				return err
 			}
@@ -182,10 +210,28 @@ func (v *view) Batches(ctx context.Context, f journal.Filter) iter.Seq2[*journal
 	return v.records(ctx, selectionOf(f))
 }
 
+// Finished implements journal.Reader.
+func (v *view) Finished(ctx context.Context, product, yeast string, before time.Time) iter.Seq2[*journal.Record, error] {
+	return v.records(ctx, finishedOnes(product, yeast, before))
+}
+
 // Open implements journal.Reader.
 func (v *view) Open(ctx context.Context) ([]*journal.Record, error) {
+	return v.list(ctx, openOnes)
+}
+
+// OpenLast implements journal.Reader.
+func (v *view) OpenLast(ctx context.Context, n int) ([]*journal.Record, error) {
+	s := openOnes
+	if s.last = n; n < 1 {
+		s.last = noReadings
+	}
+	return v.list(ctx, s)
+}
+
+func (v *view) list(ctx context.Context, s selection) ([]*journal.Record, error) {
 	var list []*journal.Record
-	for r, err := range v.records(ctx, openOnes) {
+	for r, err := range v.records(ctx, s) {
 		if err != nil {
 			return nil, err
 		}

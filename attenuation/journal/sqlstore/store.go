@@ -16,11 +16,12 @@ import (
 
 // Store is a journal in one SQLite file.
 type Store struct {
-	path   string
-	db     *sql.DB
-	turn   chan struct{} // held by the one goroutine that writes
-	closed atomic.Bool
-	frozen bool // opened as an immutable file
+	path    string
+	version int // of the schema
+	db      *sql.DB
+	turn    chan struct{} // held by the one goroutine that writes
+	closed  atomic.Bool
+	frozen  bool // opened as an immutable file
 }
 
 var _ journal.Store = (*Store)(nil)
@@ -67,18 +68,19 @@ func Open(ctx context.Context, path string, opts ...Option) (*Store, error) {
 
 // lookAt refuses what is no database before SQLite sees it.
 func lookAt(path string) error {
+	// Asked before it is opened: a pipe would wait for its other end.
+	info, err := os.Stat(path)
+	if err != nil {
+		return err
+	}
+	if !info.Mode().IsRegular() {
+		return fmt.Errorf("%w: not a file that keeps anything", journal.ErrNoJournal)
+	}
 	f, err := os.Open(path)
 	if err != nil {
 		return err
 	}
 	defer f.Close()
-	info, err := f.Stat()
-	if err != nil {
-		return err
-	}
-	if !info.Mode().IsRegular() {
-		return fmt.Errorf("%w: not a file", journal.ErrNoJournal)
-	}
 	magic := make([]byte, len(fileMagic))
 	switch _, err := io.ReadFull(f, magic); {
 	case err == io.EOF:
@@ -120,7 +122,13 @@ func (s *Store) checkKind(ctx context.Context) error {
 	if id != applicationID {
 		return fmt.Errorf("%w: a database of another program", journal.ErrNoJournal)
 	}
-	return migrate(ctx, s.db, version, migrations)
+	s.version = len(migrations.names)
+	err := migrate(ctx, s.db, version, migrations)
+	if version > 0 && errors.Is(err, journal.ErrReadOnly) {
+		// Read as it is: all that later versions added is missing in it.
+		s.version, err = version, nil
+	}
+	return err
 }
 
 // Close implements journal.Store.
@@ -139,7 +147,7 @@ func (s *Store) view(ctx context.Context, fn func(*view) error) error {
 		return s.failed(ctx, err, readErr)
 	}
 	defer func() { _ = tx.Rollback() }()
-	v := newView(tx)
+	v := newView(tx, s.version)
 	defer v.over.Store(true)
 	return s.failed(ctx, fn(v), readErr)
 }

@@ -7,6 +7,7 @@ import (
 	"fmt"
 	"iter"
 	"sync/atomic"
+	"time"
 
 	"gylebook/attenuation/journal"
 )
@@ -16,13 +17,16 @@ import (
 // is asked between rows, which is far cheaper than a watcher a statement.
 type view struct {
 	tx       *sql.Tx
+	version  int // of the schema
 	prepared map[string]*sql.Stmt
 	over     atomic.Bool // whoever kept the view may not use it
 }
 
 var _ journal.Reader = (*view)(nil)
 
-func newView(tx *sql.Tx) *view { return &view{tx: tx, prepared: make(map[string]*sql.Stmt)} }
+func newView(tx *sql.Tx, version int) *view {
+	return &view{tx: tx, version: version, prepared: make(map[string]*sql.Stmt)}
+}
 
 func (v *view) prepare(ctx context.Context, query string) (*sql.Stmt, error) {
 	if err := ctx.Err(); err != nil {
@@ -162,6 +166,11 @@ func (s *Store) Open(ctx context.Context) ([]*journal.Record, error) {
 	return stored(ctx, s, func(v *view) ([]*journal.Record, error) { return v.Open(ctx) })
 }
 
+// OpenLast implements journal.Reader.
+func (s *Store) OpenLast(ctx context.Context, n int) ([]*journal.Record, error) {
+	return stored(ctx, s, func(v *view) ([]*journal.Record, error) { return v.OpenLast(ctx, n) })
+}
+
 // BatchIDs implements journal.Reader.
 func (s *Store) BatchIDs(ctx context.Context) ([]string, error) {
 	return stored(ctx, s, func(v *view) ([]string, error) { return v.BatchIDs(ctx) })
@@ -198,6 +207,11 @@ func (s *Store) Head(ctx context.Context) (int64, string, error) {
 // Batches implements journal.Reader.
 func (s *Store) Batches(ctx context.Context, f journal.Filter) iter.Seq2[*journal.Record, error] {
 	return streamed(ctx, s, func(v *view) iter.Seq2[*journal.Record, error] { return v.Batches(ctx, f) })
+}
+
+// Finished implements journal.Reader.
+func (s *Store) Finished(ctx context.Context, product, yeast string, before time.Time) iter.Seq2[*journal.Record, error] {
+	return streamed(ctx, s, func(v *view) iter.Seq2[*journal.Record, error] { return v.Finished(ctx, product, yeast, before) })
 }
 
 // Entries implements journal.Reader.

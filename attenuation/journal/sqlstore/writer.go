@@ -100,6 +100,8 @@ func (w *writer) insert(ctx context.Context, e journal.Entry) error {
 		return put(ctx, w, ogs, e, &b)
 	case journal.Limit:
 		return put(ctx, w, limits, e, &b)
+	case journal.Volume:
+		return put(ctx, w, volumes, e, &b)
 	case journal.Close:
 		w.batches[b.Batch] = ended
 		return errors.Join(put(ctx, w, closes, e, &b), w.ended(ctx, b.Batch))

@@ -101,7 +101,7 @@ func testEveryKind(t *testing.T, s journal.Store) {
 	thermometer := journal.Instrument{ID: "Th1", Type: journal.Thermometer, Since: noon(1, 8)}
 	comesBack(
 		t, s, hydrometer("H1"), thermometer, certificate("H1", 2), check("H1", 3), batch("B-1"), unpitched, og("B-1", 10), limit("B-1", 9),
-		reading("B-1", 3, 9), gassy, event("B-1", 4), blend, voidOf(9), ending("B-1", 20), retire("H1", 21),
+		reading("B-1", 3, 9), gassy, event("B-1", 4), blend, volume("B-1", "98.50", 5), voidOf(9), ending("B-1", 20), retire("H1", 21),
 	)
 	for _, r := range record(t, s, "B-1").Readings {
 		if r.Body.Gravity.Text != "1.0480" || r.Body.Temp.Text != "18.50" {

@@ -78,10 +78,10 @@ func testClosed(t *testing.T, s journal.Store) {
 
 func testRetired(t *testing.T, s journal.Store) {
 	append1(t, s, hydrometer("H1"), batch("B-1"), retire("H1", 9))
-	with := reading("B-1", 3, 9)
+	with := reading("B-1", 10, 9)
 	with.Instrument = "H1"
 	withOG := og("B-1", 10)
-	withOG.Instrument = "H1"
+	withOG.Instrument, withOG.At = "H1", noon(10, 9)
 	for _, b := range []journal.Body{certificate("H1", 10), check("H1", 10), retire("H1", 10), with, withOG} {
 		refused(t, s, journal.ErrRetired, b)
 	}
