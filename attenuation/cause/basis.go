@@ -137,7 +137,7 @@ func (q *question) eventBetween(a, b *journal.Value) bool {
 
 // litresOf is the volume of the batch as pitched.
 func litresOf(v journal.View) (float64, bool) {
-	n, err := asread.ParseNumber(v.Record.Batch.Volume)
+	n, err := asread.ParseNumber(v.Record.Volume())
 	return n.Float(), err == nil && n.Float() > 0
 }
 

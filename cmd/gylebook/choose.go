@@ -81,7 +81,8 @@ func (b *bench) instrumentFor(ctx context.Context, r journal.Reader, name, batch
 // lastInstrumentOf is the instrument of the newest reading that counts of an open
 // batch or vessel; "" when there is none. A name that is not open is left to others.
 func lastInstrumentOf(ctx context.Context, r journal.Reader, name string) (string, error) {
-	open, err := r.OpenLast(ctx, 1)
+	// A few, since the newest may be void.
+	open, err := r.OpenLast(ctx, 5)
 	if err != nil {
 		return "", err
 	}

@@ -95,9 +95,9 @@ func todayTable(list []standing, title string, width int) tables.Table {
 	t := tables.Table{
 		Title: title,
 		Columns: []tables.Column{
-			{Head: "vessel"}, {Head: "product"}, right("day"), right("hours"), right("gravity"), right("fall"), right("app. %"), {Head: "word"}, right("next"),
+			{Head: "vessel"}, {Head: "product"}, right("day"), right("h"), right("SG"), right("fall"), right("app."), {Head: "word"}, right("next"),
 		},
-		Foot: []string{"hours since the last reading; fall in points in 24 h; app. % attenuation; next:", "the gravity expected now, by the forecast"},
+		Foot: []string{"h: hours since the last reading; fall: points in 24 h; app.: % apparent", "attenuation; next: the gravity expected now, by the forecast"},
 	}
 	for _, one := range list {
 		t.Rows = append(t.Rows, one.cells())

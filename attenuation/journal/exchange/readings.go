@@ -97,7 +97,7 @@ func batchCells(rec *journal.Record, mark rune) [4]string {
 	if rec.Batch.Pitched != nil {
 		pitched = stamp(*rec.Batch.Pitched)
 	}
-	return [4]string{rec.Batch.Product, pitched, ogText(rec.OGs, mark), withMark(rec.Batch.Volume, mark)}
+	return [4]string{rec.Batch.Product, pitched, ogText(rec.OGs, mark), withMark(rec.Volume(), mark)}
 }
 
 func writeValue(out *cells, v *journal.Value, view journal.View, book *journal.Book) {
