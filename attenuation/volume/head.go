@@ -30,10 +30,11 @@ type head struct {
 // readHead reads the beginning of a file and finds out its form. The columns in
 // numeric hold numbers.
 func readHead(in io.Reader, numeric []string) (*head, error) {
-	sample := make([]byte, dialect.SampleSize)
-	n, err := io.ReadFull(in, sample[:sampleSize])
-	if err == nil && bytes.IndexByte(sample[:n], '"') >= 0 {
+	sample := make([]byte, sampleSize)
+	n, err := io.ReadFull(in, sample)
+	if err == nil && bytes.IndexByte(sample, '"') >= 0 {
 		var more int
+		sample = append(sample, make([]byte, dialect.SampleSize-sampleSize)...)
 		more, err = io.ReadFull(in, sample[n:])
 		n += more
 	}

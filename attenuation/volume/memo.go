@@ -18,6 +18,7 @@ const (
 	memoBits = 13
 	memoText = 110
 	memoRest = 15
+	memoFrom = 32 << 10 // bytes; less to work is not worth a memo
 )
 
 type slot struct {
@@ -28,11 +29,11 @@ type slot struct {
 
 type memoKey [2]uint64
 
-func newMemo() memo { return memo{slots: make([]slot, 1<<memoBits)} }
-
-// chunk begins a chunk and looks back on the one before.
-func (m *memo) chunk() {
+// chunk begins a chunk of n bytes and looks back on the one before.
+func (m *memo) chunk(n int) {
 	switch {
+	case m.slots == nil && n >= memoFrom:
+		m.slots = make([]slot, 1<<memoBits)
 	case m.rest > 0:
 		m.rest--
 	case m.asked >= 1000 && m.found < m.asked/4:
@@ -65,7 +66,7 @@ func keyOf(cells [][]byte) (k memoKey, ok bool) {
 // slot returns the place for the results of these cells, nil for none, and whether
 // they are there.
 func (m *memo) slot(cells [][]byte) (s *slot, k memoKey, there bool) {
-	if m.rest > 0 {
+	if m.rest > 0 || m.slots == nil {
 		return nil, k, false
 	}
 	k, ok := keyOf(cells)

@@ -61,7 +61,7 @@ func (r *cutter) fill(c *chunk) error {
 func (r *cutter) read(c *chunk) {
 	room := r.size - len(c.in)
 	if room <= 0 {
-		room = max(r.size/2, 1)
+		room = max(len(c.in)/2, 1)
 	}
 	from := len(c.in)
 	if cap(c.in)-from < room {

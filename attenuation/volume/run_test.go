@@ -33,7 +33,10 @@ func TestRowsAreTheSingleValues(t *testing.T) {
 	r := rand.New(rand.NewPCG(3, 4))
 	var file strings.Builder
 	file.WriteString("reading,temp\n")
-	const n = 100_000
+	n := 100_000
+	if testing.Short() {
+		n = 10_000
+	}
 	want := make([][2]string, n)
 	for i := range n {
 		sg := 0.99 + r.Float64()*0.15
@@ -337,6 +340,9 @@ func TestMemoryIsFlat(t *testing.T) {
 
 // A row that is worked allocates nothing.
 func TestRowsAllocateNothing(t *testing.T) {
+	if testing.Short() {
+		t.Skip("360 000 rows to work")
+	}
 	allocations := func(n int) float64 {
 		text := rows(n)
 		p := correctPlan(single{gravity.ScaleSG, asread.C, gravity.Pair2020})

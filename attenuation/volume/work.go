@@ -36,7 +36,7 @@ type worker struct {
 
 func newWorker(p *Plan, f *form, inputs []int) *worker {
 	w := &worker{
-		plan: p, form: f, inputs: inputs, errorAt: -1, row: p.New(), memo: newMemo(),
+		plan: p, form: f, inputs: inputs, errorAt: -1, row: p.New(),
 		rec: record{comma: f.comma}, cells: make([][]byte, len(inputs)), out: Results{make([]result, len(p.Results))},
 	}
 	for i, name := range p.Results {
@@ -57,7 +57,7 @@ func (w *worker) work(c *chunk) {
 	if need := 3 * len(c.in); cap(c.out) < need {
 		c.out = make([]byte, 0, need)
 	}
-	w.memo.chunk()
+	w.memo.chunk(len(c.in))
 	all := simple(c.in)
 	for at := 0; at < len(c.in); {
 		rest := c.in[at:]
@@ -106,7 +106,6 @@ func (w *worker) one(c *chunk, at int, raw []byte) {
 		w.refuse(c, at, errors.New(w.rec.why))
 		return
 	}
-	c.rows++
 	from := len(c.out)
 	if w.form.lines {
 		c.out = w.form.object(c.out, &w.rec)
@@ -118,16 +117,17 @@ func (w *worker) one(c *chunk, at int, raw []byte) {
 	}
 	known, key, there := w.memo.slot(w.cells)
 	if there {
+		c.rows++
 		c.out = append(append(c.out, known.text[:known.n]...), w.form.eol...)
 		return
 	}
 	w.out.clear()
 	if err := w.row.Row(w.cells, &w.out); err != nil {
-		c.rows--
 		c.out = c.out[:from]
 		w.refuseValue(c, at, raw, err)
 		return
 	}
+	c.rows++
 	from = len(c.out)
 	c.out = w.form.results(c.out, w.out.cells)
 	if n := len(c.out) - from; known != nil && n <= memoText {

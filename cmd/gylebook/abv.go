@@ -62,6 +62,9 @@ func (b *bench) abv(c *cli.Context) error {
 	if c.IsSet("rows") {
 		return b.abvRows(c, m, rule)
 	}
+	if err := rowsAlone(c); err != nil {
+		return err
+	}
 	var done []strength
 	refused := b.pairs(c, func(p pair) error {
 		if err := p.setReadingU(c); err != nil {

@@ -39,6 +39,9 @@ func (b *bench) attenuation(c *cli.Context) error {
 	if c.IsSet("rows") {
 		return b.attenuationRows(c)
 	}
+	if err := rowsAlone(c); err != nil {
+		return err
+	}
 	var done []attenuated
 	refused := b.pairs(c, func(p pair) error {
 		one := attenuated{pair: p}

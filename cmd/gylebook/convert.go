@@ -97,6 +97,9 @@ func (b *bench) convert(c *cli.Context) error {
 	if c.IsSet("rows") {
 		return b.convertRows(c)
 	}
+	if err := rowsAlone(c); err != nil {
+		return err
+	}
 	if c.Args().Len() == 0 {
 		return missing(c.Command, "a value")
 	}

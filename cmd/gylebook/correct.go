@@ -63,6 +63,9 @@ func (b *bench) correct(c *cli.Context) error {
 	if c.IsSet("rows") {
 		return b.correctRows(c)
 	}
+	if err := rowsAlone(c); err != nil {
+		return err
+	}
 	if c.Args().Len() == 0 {
 		return missing(c.Command, "a reading")
 	}

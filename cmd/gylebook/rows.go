@@ -42,6 +42,16 @@ func rowsFlags(inputs ...string) []cli.Flag {
 	return flags
 }
 
+// rowsAlone refuses flags that mean nothing without --rows.
+func rowsAlone(c *cli.Context) error {
+	for _, name := range []string{"columns", "out", "stop", "reading-col", "temp-col", "og-col", "pg-col"} {
+		if c.IsSet(name) {
+			return usageError("add --rows FILE, or leave it out", "--%s is for --rows", name)
+		}
+	}
+	return nil
+}
+
 func columnFlag(input string) string { return input + "-col" }
 
 var columnMeans = map[string]string{
