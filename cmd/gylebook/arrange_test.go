@@ -9,7 +9,7 @@ import (
 )
 
 func TestArrange(t *testing.T) {
-	commands := (&bench{}).app().Commands
+	commands := (&bench{}).commands("")
 	for line, want := range map[string]string{
 		"":                                 "",
 		"convert 48":                       "convert -- 48",
@@ -54,7 +54,7 @@ func FuzzArrange(f *testing.F) {
 	f.Add("help\nabv\n--json", "543210")
 	f.Add("--temp\n--\n--\n-\n\n-", "11220")
 	f.Add("correct\n1.050\n--temp=\n28C", "")
-	commands := (&bench{}).app().Commands
+	commands := (&bench{}).commands("")
 	f.Fuzz(func(t *testing.T, raw, roles string) {
 		words := strings.Split(raw, "\n")
 		got, err := arrange(slices.Clone(words), commands)
@@ -127,5 +127,18 @@ func checkRoles(t *testing.T, roles string, arrange func([]string) ([]string, er
 	}
 	if !slices.Equal(want, got) {
 		t.Errorf("%q: -want +got\n%s", words, cmp.Diff(want, got))
+	}
+}
+
+// The names that choose a command are those of the commands themselves.
+func TestOfferedNames(t *testing.T) {
+	b := &bench{}
+	for _, o := range b.offered() {
+		if name := o.build().Name; name != o.name {
+			t.Errorf("%s builds %s", o.name, name)
+		}
+		if one := b.commands(o.name); o.name != "completion" && (len(one) != 1 || one[0].Name != o.name) {
+			t.Errorf("%s alone gives %d commands", o.name, len(one))
+		}
 	}
 }

@@ -28,7 +28,11 @@ type bench struct {
 // run is the whole program. It returns the exit code.
 func run(ctx context.Context, args []string, in io.Reader, out, errOut io.Writer) int {
 	b := &bench{in: in, out: out, err: errOut}
-	app := b.app()
+	only := ""
+	if len(args) > 0 {
+		only = args[0]
+	}
+	app := b.app(only)
 	help := &keeper{w: out}
 	app.Writer = help
 	line, err := arrange(args, app.Commands)
@@ -66,7 +70,61 @@ func (k *keeper) Write(p []byte) (int, error) {
 	return n, err
 }
 
-func (b *bench) app() *cli.App {
+// offered are the commands in the order of help. Building one is quick, building
+// all of them is most of what a short command does: only names stand here.
+func (b *bench) offered() []struct {
+	name, group string
+	build       func() *cli.Command
+} {
+	return []struct {
+		name, group string
+		build       func() *cli.Command
+	}{
+		{"correct", "bench", b.correctCommand},
+		{"convert", "bench", b.convertCommand},
+		{"abv", "bench", b.abvCommand},
+		{"attenuation", "bench", b.attenuationCommand},
+		{"refractometer", "bench", b.refractometerCommand},
+		{"table", "bench", b.tableCommand},
+		{"sources", "bench", b.sourcesCommand},
+		{"selfcheck", "bench", b.selfcheckCommand},
+		{"instrument", "journal", b.instrumentCommand},
+		{"batch", "journal", b.batchCommand},
+		{"log", "journal", b.logCommand},
+		{"undo", "journal", b.undoCommand},
+		{"void", "journal", b.voidCommand},
+		{"event", "journal", b.eventCommand},
+		{"export", "journal", b.exportCommand},
+		{"import", "journal", b.importCommand},
+		{"journal", "journal", b.journalCommand},
+		{"rounds", "journal", b.roundsCommand},
+		{"today", "journal", b.todayCommand},
+		{"forecast", "journal", b.forecastCommand},
+		{"terminal", "journal", b.terminalCommand},
+		{"season", "journal", b.seasonCommand},
+		{"why", "journal", b.whyCommand},
+		{"completion", "journal", b.completionCommand},
+		{completeOpen, "journal", b.completeOpenCommand},
+	}
+}
+
+// commands builds the command called only, or all of them when it is none of them
+// or needs to know the others.
+func (b *bench) commands(only string) []*cli.Command {
+	var all []*cli.Command
+	for _, o := range b.offered() {
+		if o.name == only && only != "completion" {
+			return grouped(o.group, o.build())
+		}
+	}
+	for _, o := range b.offered() {
+		all = append(all, grouped(o.group, o.build())...)
+	}
+	return all
+}
+
+// app is the whole program; only names the command that the line begins with.
+func (b *bench) app(only string) *cli.App {
 	app := &cli.App{
 		Name:                  "gylebook",
 		Usage:                 "hydrometer readings, corrected, converted and explained",
@@ -78,18 +136,7 @@ func (b *bench) app() *cli.App {
 		CustomAppHelpTemplate: appHelp,
 		ExitErrHandler:        func(*cli.Context, error) {},
 		OnUsageError:          onUsage,
-		Commands: slices.Concat(
-			grouped("bench",
-				b.correctCommand(), b.convertCommand(), b.abvCommand(), b.attenuationCommand(),
-				b.refractometerCommand(), b.tableCommand(), b.sourcesCommand(), b.selfcheckCommand(),
-			),
-			grouped("journal",
-				b.instrumentCommand(), b.batchCommand(), b.logCommand(), b.undoCommand(), b.voidCommand(), b.eventCommand(),
-				b.exportCommand(), b.importCommand(), b.journalCommand(),
-				b.roundsCommand(), b.todayCommand(), b.forecastCommand(), b.terminalCommand(), b.seasonCommand(), b.whyCommand(),
-				b.completionCommand(), b.completeOpenCommand(),
-			),
-		),
+		Commands:              b.commands(only),
 	}
 	app.Action = func(c *cli.Context) error {
 		if c.Args().Len() == 0 {
