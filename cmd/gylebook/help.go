@@ -29,8 +29,8 @@ gylebook COMMAND --help shows the flags. Flags may stand anywhere; --json and
 --csv print for machines; --explain shows every step. Values may be 1.048, 1048,
 48 (points), 12P, 12.1Bx, 90Oe, 18.2KMW, 6.9Be, 18Tw, 1046kg/m3, 104g/L.
 
-exit codes: 0 done, 1 failed, 64 wrong usage, 65 bad data, 66 no such file,
-73 cannot write, 130 interrupted
+exit codes: 0 done, 1 failed, 3 not terminal (terminal --check), 64 wrong usage,
+65 bad data, 66 no such file, 73 cannot write, 130 interrupted
 `
 
 // grouped puts commands under one head in appHelp; the heads are in their own order.
