@@ -50,11 +50,12 @@ func perScale(one *journal.Value) float64 {
 		return 1000
 	}
 	convert := gravity.NewConverter()
-	lo, errLo := convert.SGOf(scale, one.Result.Corrected-least, gravity.Pair2020)
-	hi, errHi := convert.SGOf(scale, one.Result.Corrected+least, gravity.Pair2020)
+	low, errLo := convert.Convert(scale, one.Result.Corrected-least, gravity.Pair2020)
+	high, errHi := convert.Convert(scale, one.Result.Corrected+least, gravity.Pair2020)
 	if errLo != nil || errHi != nil {
 		return 0
 	}
+	lo, hi := low.SG, high.SG
 	// An instrument with two scales is corrected on its own, which need not be the
 	// one that was typed.
 	if here := (points(lo) + points(hi)) / 2; !(math.Abs(here-points(one.Result.SG)) < 3) {
