@@ -7,17 +7,20 @@ import "encoding/binary"
 // and again.
 //
 // Where they do not, looking costs more than it saves, so that it is left alone for
-// some chunks when few of one were found.
+// some chunks when few of one were found, and for twice as many the next time.
 type memo struct {
 	slots        []slot
 	asked, found int // in this chunk
 	rest         int // chunks for which it is left alone
+	last         int // what rest was the last time
 }
 
 const (
-	memoBits = 13
+	memoBits = 11
 	memoText = 110
-	memoRest = 15
+	memoRest = 16       // chunks, at first
+	memoLong = 256      // and at most
+	memoFew  = 250      // rows; so few tell nothing
 	memoFrom = 32 << 10 // bytes; less to work is not worth a memo
 )
 
@@ -36,8 +39,12 @@ func (m *memo) chunk(n int) {
 		m.slots = make([]slot, 1<<memoBits)
 	case m.rest > 0:
 		m.rest--
-	case m.asked >= 1000 && m.found < m.asked/4:
-		m.rest = memoRest
+	case m.asked < memoFew:
+	case m.found < m.asked/4:
+		m.last = min(max(2*m.last, memoRest), memoLong)
+		m.rest = m.last
+	default:
+		m.last = 0
 	}
 	m.asked, m.found = 0, 0
 }
@@ -63,12 +70,12 @@ func keyOf(cells [][]byte) (k memoKey, ok bool) {
 	return k, true
 }
 
+// awake reports whether the memo is to be asked.
+func (m *memo) awake() bool { return m.rest == 0 && m.slots != nil }
+
 // slot returns the place for the results of these cells, nil for none, and whether
 // they are there.
 func (m *memo) slot(cells [][]byte) (s *slot, k memoKey, there bool) {
-	if m.rest > 0 || m.slots == nil {
-		return nil, k, false
-	}
 	k, ok := keyOf(cells)
 	if !ok {
 		return nil, k, false

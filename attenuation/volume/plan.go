@@ -81,6 +81,7 @@ const (
 	truth
 )
 
+// result is of a kind; what belongs to another kind is left over from other rows.
 type result struct {
 	kind kind
 	yes  bool
@@ -89,7 +90,10 @@ type result struct {
 }
 
 // Number sets a number. What is not finite stays empty.
-func (r *Results) Number(i int, x float64) { r.cells[i] = result{kind: number, x: x} }
+func (r *Results) Number(i int, x float64) {
+	c := &r.cells[i]
+	c.kind, c.x = number, x
+}
 
 // Text sets a text. An empty one stays empty.
 func (r *Results) Text(i int, s string) { r.cells[i] = result{kind: text, s: s} }
@@ -97,4 +101,8 @@ func (r *Results) Text(i int, s string) { r.cells[i] = result{kind: text, s: s} 
 // Bool sets a truth value.
 func (r *Results) Bool(i int, yes bool) { r.cells[i] = result{kind: truth, yes: yes} }
 
-func (r *Results) clear() { clear(r.cells) }
+func (r *Results) clear() {
+	for i := range r.cells {
+		r.cells[i].kind = empty
+	}
+}

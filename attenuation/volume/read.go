@@ -8,7 +8,7 @@ import (
 )
 
 // chunkSize is how much of the input is worked at a time.
-const chunkSize = 256 << 10
+const chunkSize = 64 << 10
 
 // cutter cuts a stream into chunks at record boundaries.
 type cutter struct {

@@ -2,7 +2,9 @@ package volume
 
 import (
 	"bytes"
+	"encoding/binary"
 	"fmt"
+	"math/bits"
 	"unicode/utf8"
 
 	"gylebook/tables/dialect"
@@ -32,15 +34,26 @@ func simple(b []byte) bool {
 // cut takes a simple record without its line end apart.
 func (r *record) cut(b []byte) {
 	r.why = ""
-	r.fields = r.fields[:0]
-	from := 0
-	for i, c := range b {
-		if c == r.comma {
-			r.fields = append(r.fields, b[from:i])
+	fields, from, i := r.fields[:0], 0, 0
+	// Eight bytes at once: those equal to the separator become zero, and the high bit
+	// of each zero byte, and of no other, is set.
+	const low, high = 0x7f7f7f7f_7f7f7f7f, 0x80808080_80808080
+	commas := uint64(r.comma) * 0x01010101_01010101
+	for ; i+8 <= len(b); i += 8 {
+		x := binary.LittleEndian.Uint64(b[i:]) ^ commas
+		for found := ^(x&low + low | x) & high; found != 0; found &= found - 1 {
+			at := i + bits.TrailingZeros64(found)/8
+			fields = append(fields, b[from:at])
+			from = at + 1
+		}
+	}
+	for ; i < len(b); i++ {
+		if b[i] == r.comma {
+			fields = append(fields, b[from:i])
 			from = i + 1
 		}
 	}
-	r.fields = append(r.fields, b[from:])
+	r.fields = append(fields, b[from:])
 }
 
 // parse takes the record that b begins with apart and returns how long it is with

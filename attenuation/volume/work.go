@@ -115,11 +115,15 @@ func (w *worker) one(c *chunk, at int, raw []byte) {
 	for i, column := range w.inputs {
 		w.cells[i] = w.rec.fields[column]
 	}
-	known, key, there := w.memo.slot(w.cells)
-	if there {
-		c.rows++
-		c.out = append(append(c.out, known.text[:known.n]...), w.form.eol...)
-		return
+	var known *slot
+	var key memoKey
+	if w.memo.awake() {
+		var there bool
+		if known, key, there = w.memo.slot(w.cells); there {
+			c.rows++
+			c.out = w.form.end(append(c.out, known.text[:known.n]...))
+			return
+		}
 	}
 	w.out.clear()
 	if err := w.row.Row(w.cells, &w.out); err != nil {
@@ -134,7 +138,7 @@ func (w *worker) one(c *chunk, at int, raw []byte) {
 		known.key, known.n = key, uint8(n)
 		copy(known.text[:], c.out[from:])
 	}
-	c.out = append(c.out, w.form.eol...)
+	c.out = w.form.end(c.out)
 }
 
 // refuse counts a row whose form is broken and writes it in a form that is not.
@@ -179,5 +183,5 @@ func (w *worker) reason(c *chunk, err error) {
 	if w.errorAt >= 0 {
 		w.out.Text(w.errorAt, err.Error())
 	}
-	c.out = append(w.form.results(c.out, w.out.cells), w.form.eol...)
+	c.out = w.form.end(w.form.results(c.out, w.out.cells))
 }

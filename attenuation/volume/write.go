@@ -49,6 +49,14 @@ func (f *form) results(dst []byte, all []result) []byte {
 	return dst
 }
 
+// end appends the end of a row.
+func (f *form) end(dst []byte) []byte {
+	if len(f.eol) == 1 { // one byte is not worth a call of memmove
+		return append(dst, f.eol[0])
+	}
+	return append(dst, f.eol...)
+}
+
 // gap is how many bytes stand before result i.
 func (f *form) gap(i int) int {
 	if f.lines {
@@ -64,11 +72,14 @@ func (f *form) number(dst []byte, x float64) []byte {
 		return append(dst, '0')
 	}
 	from := len(dst)
-	verb := byte('f')
-	if a := math.Abs(x); a < 1e-6 || a >= 1e21 {
-		verb = 'e'
+	dst, ok := appendShort(dst, x)
+	if !ok {
+		verb := byte('f')
+		if a := math.Abs(x); a < 1e-6 || a >= 1e21 {
+			verb = 'e'
+		}
+		dst = strconv.AppendFloat(dst, x, verb, -1, 64)
 	}
-	dst = strconv.AppendFloat(dst, x, verb, -1, 64)
 	if f.lines || f.decimal != ',' {
 		return dst
 	}
