@@ -50,7 +50,7 @@ func (l Limits) Sigma() float64 { return l.MeanRange / sigmaFactor }
 // points, and points that are not finite or whose sum is not, are an error.
 func LimitsFrom(points []float64) (Limits, error) {
 	if len(points) < 2 {
-		return Limits{}, fmt.Errorf("read %d points, wanted 2 at least for a moving range", len(points))
+		return Limits{}, fmt.Errorf("read too few points (%d), wanted 2 at least for a moving range", len(points))
 	}
 	centre, meanRange := lines(points)
 	l := LimitsOf(centre, meanRange)

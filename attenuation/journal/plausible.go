@@ -168,7 +168,7 @@ func (s Situation) possible(r Reading) *Hold {
 		return &Hold{Code: code, Text: fmt.Sprintf(format, args...), Tip: tip, Final: true}
 	}
 	if swapped(r) {
-		return final(HoldSwapped, "type "+r.Temp.Text+" "+r.Gravity.Text, "read gravity %.24q at temperature %.24q, wanted the gravity first", r.Gravity.Text, r.Temp.Text)
+		return swap(r)
 	}
 	// The parsers know what to type instead, Check does not.
 	_, errGravity := r.Gravity.Reading()
@@ -198,6 +198,13 @@ func (s Situation) possible(r Reading) *Hold {
 func swapped(r Reading) bool {
 	t, err := asread.ParseNumber(r.Temp.Text)
 	return err == nil && t.Places() >= 3 && t.Float() > 0.95 && t.Float() < 1.2
+}
+
+func swap(r Reading) *Hold {
+	return &Hold{
+		Code: HoldSwapped, Tip: "type " + r.Temp.Text + " " + r.Gravity.Text, Final: true,
+		Text: fmt.Sprintf("read gravity %.24q at temperature %.24q, wanted the gravity first", r.Gravity.Text, r.Temp.Text),
+	}
 }
 
 func clock(t time.Time) string { return t.Format("2006-01-02 15:04 -07:00") }

@@ -108,6 +108,10 @@ func (s Situation) plunge(view View, a, b *Value) *Hold {
 		return nil
 	}
 	hours := b.Source.TakenAt.Sub(since).Hours()
+	// Most fall far less, and the events take their time. Rounding adds 0.05 at most.
+	if 1000*(from-float64(b.SG)) < fallSlack+fastestFall*hours-0.1 {
+		return nil
+	}
 	if hours < 0 || view.changedBetween(since, b.Source.TakenAt) || view.addedBetween(since, b.Source.TakenAt) {
 		return nil
 	}
@@ -127,15 +131,28 @@ func spread(view View, one *Value, replicates []int64) *Hold {
 		if !v.Counts() || !slices.Contains(replicates, v.Number) {
 			continue
 		}
-		if d := math.Abs(1000 * float64(v.Result.SG-one.Result.SG)); d > 2 {
-			return &Hold{
-				Code: HoldSpread, Tip: fmt.Sprintf("void %d --reason TEXT if that one was a slip, else read again", v.Number),
-				Text: fmt.Sprintf("%s is %s points from the other reading of this minute (entry %d, %s)",
-					four(own(one, one)), tenth(d), v.Number, four(float64(v.Result.SG))),
-			}
+		if hold := far(one, v, fmt.Sprintf("entry %d, ", v.Number)); hold != nil {
+			hold.Tip = fmt.Sprintf("void %d --reason TEXT if that one was a slip, else read again", v.Number)
+			return hold
 		}
 	}
 	return nil
+}
+
+// farApart is how far [points] readings of one minute may be apart.
+const farApart = 2.0
+
+// far holds a reading that is too far from another of its minute; entry names that.
+func far(one, other *Value, entry string) *Hold {
+	d := math.Abs(asread.RoundDiff(own(one, one), float64(other.Result.SG), 1000, 1, asread.HalfUp))
+	if d <= farApart {
+		return nil
+	}
+	return &Hold{
+		Code: HoldSpread, Tip: "void one of them",
+		Text: fmt.Sprintf("%s is %s points from the other reading of this minute (%s%s)",
+			four(own(one, one)), tenth(d), entry, four(float64(other.Result.SG))),
+	}
 }
 
 func four(x float64) string  { return asread.Fixed(x, 4, asread.HalfEven) }

@@ -83,7 +83,7 @@ func (b *bench) correct(c *cli.Context) error {
 			fields = fields[:1]
 		}
 		if len(fields) != 1 {
-			return dataError("one reading a line, its temperature behind it", "read %d values, wanted a reading and its temperature", len(fields))
+			return dataError("one reading a line, its temperature behind it", "read %s, wanted a reading and its temperature", count(len(fields), "value", "values"))
 		}
 		if temp == "" {
 			return usageError("read the sample's thermometer and add it, like --temp 28C", "the sample temperature is missing; usage: gylebook correct READING… --temp T")

@@ -35,7 +35,7 @@ func (b *bench) event(c *cli.Context) error {
 	if c.Args().Len() < 2 {
 		return wanted(c, "a batch and what was done")
 	}
-	body, err := b.eventOf(c)
+	body, typed, err := b.eventOf(c)
 	if err != nil {
 		return err
 	}
@@ -67,32 +67,34 @@ func (b *bench) event(c *cli.Context) error {
 		if err != nil {
 			return err
 		}
-		return b.showEvent(c, s, entries[0], body)
+		return b.showEvent(c, s, entries[0], body, typed)
 	})
 }
 
-// eventOf reads the flags of an event; the batch is found later.
-func (b *bench) eventOf(c *cli.Context) (journal.Event, error) {
+// eventOf reads the flags of an event, and how its amounts were typed; the batch is
+// found later.
+func (b *bench) eventOf(c *cli.Context) (journal.Event, amountsTyped, error) {
 	body := journal.Event{What: strings.ToLower(c.Args().Get(1)), From: c.String("from"), Vessel: c.String("to"), Note: c.String("note")}
 	if !slices.Contains(journal.EventKinds, body.What) {
-		return body, usageError("did you mean "+journal.Nearest(body.What, journal.EventKinds, 1)[0]+"?",
+		return body, amountsTyped{}, usageError("did you mean "+journal.Nearest(body.What, journal.EventKinds, 1)[0]+"?",
 			"unknown event %.40q, known: %s", c.Args().Get(1), strings.Join(journal.EventKinds, ", "))
 	}
 	var err error
 	if body.At, err = b.past(c, "at"); err != nil {
-		return body, err
+		return body, amountsTyped{}, err
 	}
 	switch {
 	case body.What == journal.Move && body.Vessel == "":
-		return body, usageError("add --to T7", "--to is missing: the vessel that it went to")
+		return body, amountsTyped{}, usageError("add --to T7", "--to is missing: the vessel that it went to")
 	case body.What == journal.Blend && body.From == "":
-		return body, usageError("add --from B26-010", "--from is missing: the batch that was blended in")
+		return body, amountsTyped{}, usageError("add --from B26-010", "--from is missing: the batch that was blended in")
 	}
-	return body, b.amounts(&body, c.Args().Slice()[2:], c.String("mass"), c.String("volume"), c.String("gravity"))
+	typed, err := b.amounts(&body, c.Args().Slice()[2:], c.String("mass"), c.String("volume"), c.String("gravity"))
+	return body, typed, err
 }
 
 // showEvent says what was done and what it makes of the original gravity.
-func (b *bench) showEvent(c *cli.Context, s journal.Store, e journal.Entry, body journal.Event) error {
+func (b *bench) showEvent(c *cli.Context, s journal.Store, e journal.Entry, body journal.Event, typed amountsTyped) error {
 	rec, err := s.Batch(c.Context, body.Batch)
 	if err != nil {
 		return err
@@ -103,7 +105,7 @@ func (b *bench) showEvent(c *cli.Context, s journal.Store, e journal.Entry, body
 	}
 	v := journal.DeriveLast(rec, book, 2)
 	sh := afterSheet("event", e, v, "")
-	sh.ladder.Answer = []string{body.Batch + " " + eventText(body)}
+	sh.ladder.Answer = []string{body.Batch + " " + eventTextTyped(body, typed)}
 	// After the event, whatever was read before it.
 	oe, sg, why := v.OEAt(forever)
 	sh.records[0] = set(set(sh.records[0], "effective_og_sg_20_20", known(sg)), "effective_og_extract_pct_mass", known(oe))

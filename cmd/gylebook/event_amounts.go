@@ -11,9 +11,13 @@ import (
 // unknownAmount says that nobody weighed or measured what was added.
 const unknownAmount = "unknown"
 
+// amountsTyped are amounts in the words of who typed them; "" where the entry, which
+// is in kg and L, has them so.
+type amountsTyped struct{ mass, volume string }
+
 // amounts reads what was added: from flags, and from words behind the kind, of which
 // one with a unit of mass or volume is an amount, any other the gravity.
-func (b *bench) amounts(body *journal.Event, words []string, mass, volume, gravity string) error {
+func (b *bench) amounts(body *journal.Event, words []string, mass, volume, gravity string) (typed amountsTyped, err error) {
 	for _, word := range joinUnits(words) {
 		_, errMass := asread.ParseMass(word)
 		_, errVolume := asread.ParseVolume(word)
@@ -25,7 +29,7 @@ func (b *bench) amounts(body *journal.Event, words []string, mass, volume, gravi
 			place = &volume
 		}
 		if *place != "" {
-			return usageError("type an amount with its unit and one gravity: top-up 20L 1.045", "read %.40q and %.40q, wanted one of them", *place, word)
+			return typed, usageError("type an amount with its unit and one gravity: top-up 20L 1.045", "read %.40q and %.40q, wanted one of them", *place, word)
 		}
 		*place = word
 	}
@@ -33,27 +37,38 @@ func (b *bench) amounts(body *journal.Event, words []string, mass, volume, gravi
 	if mass != "" && mass != unknownAmount {
 		m, err := asread.ParseMass(mass)
 		if err != nil {
-			return dataError(hintOf(err), "--mass: %v", err)
+			return typed, dataError(hintOf(err), "--mass: %v", err)
 		}
-		body.MassKg = m.Text
+		body.MassKg, typed.mass = m.Text, otherThan(m.Input, shortAmount(m.Text)+" kg")
 	}
 	if volume != "" && volume != unknownAmount {
 		v, err := asread.ParseVolume(volume)
 		if err != nil {
-			return dataError(hintOf(err), "--volume: %v", err)
+			return typed, dataError(hintOf(err), "--volume: %v", err)
 		}
-		body.VolumeL = v.Text
+		body.VolumeL, typed.volume = v.Text, otherThan(v.Input, shortAmount(v.Text)+" L")
 	}
 	if gravity != "" {
-		var err error
 		if body.Gravity, err = b.readWith(nil, gravity); err != nil {
-			return err
+			return typed, err
 		}
 	}
 	if knowingly {
-		return nil
+		return typed, nil
 	}
-	return amountMissing(*body)
+	return typed, amountMissing(*body)
+}
+
+// otherThan is a text as it was typed, "" when it says what is shown: blanks, letter
+// case and the decimal mark aside.
+func otherThan(typed, shown string) string {
+	plain := func(s string) string {
+		return strings.ReplaceAll(strings.ToLower(strings.Join(strings.Fields(s), "")), ",", ".")
+	}
+	if plain(typed) == plain(shown) {
+		return ""
+	}
+	return typed
 }
 
 // amountMissing refuses an addition without what the mass balance needs of it.
@@ -89,14 +104,21 @@ func shortAmount(text string) string {
 }
 
 // eventText is an event in a few words.
-func eventText(e journal.Event) string {
+func eventText(e journal.Event) string { return eventTextTyped(e, amountsTyped{}) }
+
+// eventTextTyped is eventText with the amounts as they were typed behind them.
+func eventTextTyped(e journal.Event, typed amountsTyped) string {
 	text := e.What
-	if e.MassKg != "" {
-		text += " " + shortAmount(e.MassKg) + " kg"
+	amount := func(kept, unit, typed string) {
+		if kept != "" {
+			text += " " + shortAmount(kept) + " " + unit
+		}
+		if typed != "" {
+			text += " (" + typed + ")"
+		}
 	}
-	if e.VolumeL != "" {
-		text += " " + shortAmount(e.VolumeL) + " L"
-	}
+	amount(e.MassKg, "kg", typed.mass)
+	amount(e.VolumeL, "L", typed.volume)
 	if e.Gravity.Text != "" {
 		text += " of " + e.Gravity.Text
 	}

@@ -8,6 +8,8 @@ import (
 	"os"
 	"syscall"
 
+	"golang.org/x/term"
+
 	"gylebook/gravity/method"
 	"gylebook/tables"
 )
@@ -83,10 +85,34 @@ func say(w io.Writer, prefix string, err error) {
 	if prefix != "" {
 		prefix += ": "
 	}
-	fmt.Fprintf(w, "gylebook: %s%s\n", prefix, tables.Clean(err.Error()))
+	tell(w, "gylebook: "+prefix+tables.Clean(err.Error()))
 	if hint := hintOf(err); hint != "" {
-		fmt.Fprintf(w, "hint: %s\n", tables.Clean(hint))
+		tell(w, "hint: "+tables.Clean(hint))
 	}
+}
+
+// tell prints what a person is told: on a terminal wrapped at its width, what
+// follows indented; elsewhere as the one line that programs look for.
+func tell(w io.Writer, text string) {
+	width := 0
+	if f, ok := w.(*os.File); ok && term.IsTerminal(int(f.Fd())) {
+		width = terminalWidth(f)
+	}
+	for _, line := range told(text, width) {
+		fmt.Fprintln(w, line)
+	}
+}
+
+// told is a text in lines of at most width columns; 0 is one line.
+func told(text string, width int) []string {
+	if width == 0 {
+		return []string{text}
+	}
+	lines := tables.Wrap(text, max(width-2, 18))
+	for k := range lines[1:] {
+		lines[k+1] = "  " + lines[k+1]
+	}
+	return lines
 }
 
 func hintOf(err error) string {

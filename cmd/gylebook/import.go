@@ -23,8 +23,9 @@ func (b *bench) importCommand() *cli.Command {
 	return b.command(&cli.Command{
 		Name: "import", Usage: "take in an export: all of it or nothing", ArgsUsage: "FILE",
 		Description: `JSON Lines go into an empty journal and are verified. CSV: what was typed is taken in, the rest is reckoned anew,
-			and figures that differ are reported; byte order mark, delimiter and decimal mark are found out. Every refused row is
-			named and then nothing is written. "-" reads stdin.`,
+			and figures that differ are reported; byte order mark, delimiter and decimal mark are found out. A row is judged as log
+			judges a reading, at its own time; status suspect with a reason keeps what is held. Every refused row is named and then
+			nothing is written. A large file takes as much again of the folder for temporary ones (TMPDIR). "-" reads stdin.`,
 		Flags: []cli.Flag{
 			&cli.BoolFlag{Name: "dry-run", Usage: "report, and write nothing"},
 			&cli.BoolFlag{Name: "create", Usage: "make batches and instruments that the journal lacks"},
@@ -45,9 +46,9 @@ func (b *bench) importFile(c *cli.Context) error {
 	defer func() { _ = in.Close() }()
 	file := bufio.NewReaderSize(in, 64<<10)
 	dry := c.Bool("dry-run")
-	// A file of a season is held whole until its last row is known to be good: the
-	// collector runs more often, so that less lies about beside it.
-	defer debug.SetGCPercent(debug.SetGCPercent(25))
+	// Little is held, and much made and dropped for each row: the collector runs more
+	// often, so that less lies about.
+	defer debug.SetGCPercent(debug.SetGCPercent(50))
 	if isLines(file) {
 		if dry {
 			return b.checkLines(c.Context, file)
@@ -60,7 +61,7 @@ func (b *bench) importFile(c *cli.Context) error {
 	}
 	return open(c.Context, func(s journal.Store) error {
 		report, err := exchange.Import(c.Context, s, b.by(), b.set.now, file, exchange.Options{
-			DryRun: dry, Create: c.Bool("create"), Location: time.Local,
+			DryRun: dry, Create: c.Bool("create"), Location: time.Local, Scratch: newScratch,
 		})
 		if err != nil && !errors.Is(err, exchange.ErrRefused) {
 			return err

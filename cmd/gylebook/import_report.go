@@ -36,7 +36,7 @@ func (b *bench) reportImport(r exchange.Report, dry bool, refused error) error {
 		b.note("note: %s refused", count(more, "more row is", "more rows are"))
 	}
 	if r.Lacks {
-		fmt.Fprintln(b.err, "hint: --create makes batches and instruments that are not in the journal")
+		tell(b.err, "hint: --create makes batches and instruments that are not in the journal")
 	}
 	note := func(format string, args ...any) {
 		s.notes = append(s.notes, method.Note{Code: method.Interpreted, Text: fmt.Sprintf(format, args...)})
@@ -63,6 +63,9 @@ func (b *bench) reportImport(r exchange.Report, dry bool, refused error) error {
 		note("%s", count(more, "more figure differs", "more figures differ"))
 	}
 	s.ladder = &tables.Ladder{Answer: []string{importLine(r, dry, refused)}}
+	if r.First > 0 {
+		s.ladder.Answer = append(s.ladder.Answer, numberedRange(r.First, r.Last))
+	}
 	if err := b.print(s); err != nil {
 		return err
 	}
@@ -97,6 +100,15 @@ func importLine(r exchange.Report, dry bool, refused error) string {
 		parts = append(parts, "nothing was written (dry run)")
 	}
 	return strings.Join(parts, "; ")
+}
+
+// numberedRange are the numbers of the entries from first to last, as a line about
+// them ends.
+func numberedRange(first, last int64) string {
+	if first == last {
+		return fmt.Sprintf("#%d", first)
+	}
+	return fmt.Sprintf("#%d to #%d", first, last)
 }
 
 // madeList names what was made: all of a few, the first of many.

@@ -66,7 +66,7 @@ func (b *bench) askHold(hold *journal.Hold, in *toLog) (bool, error) {
 			return in.keep != "", nil
 		}},
 	)
-	fmt.Fprintf(b.err, "held: %s\n", tables.Clean(hold.Text))
+	tell(b.err, "held: "+tables.Clean(hold.Text))
 	for k, one := range choices {
 		fmt.Fprintf(b.err, "  %d  %s\n", k+1, one.text)
 	}
@@ -102,7 +102,7 @@ func (b *bench) askAddition(in *toLog) (bool, error) {
 			"read %.40q, wanted one of %s", strings.Join(fields, " "), strings.Join(journal.EventKinds, ", "))
 	}
 	e := journal.Event{What: kind, At: in.at.Add(-addedBefore)}
-	if err := b.amounts(&e, fields[1:], "", "", ""); err != nil {
+	if _, err := b.amounts(&e, fields[1:], "", "", ""); err != nil {
 		return false, err
 	}
 	in.before = &e

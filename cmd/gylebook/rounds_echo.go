@@ -65,15 +65,15 @@ func (r *round) keep(done logged, remembered string) error {
 	return err
 }
 
-// echo is one line on what is on disk; what does not fit width is left out from
-// the end.
+// echo is one line on what is on disk, with the number of its entry; what does not
+// fit width is left out from before that.
 func echo(name string, done logged, remembered string, width int) string {
 	v := done.value
 	switch {
 	case done.repeat || v == nil:
 		return name + "  already there"
 	case v.Err != nil:
-		return fmt.Sprintf("%s  read %s, entry %d, not corrected", name, v.Source.Gravity.Text, done.entry.Number)
+		return echoed(fmt.Sprintf("%s  read %s, not corrected", name, v.Source.Gravity.Text), done.entry)
 	}
 	line := name + "  " + fixed(float64(v.Result.SG), 4) + "  read " + v.Typed.ReadAs() + " at " + v.Temp.ReadAs() + remembered
 	var more []string
@@ -90,10 +90,14 @@ func echo(name string, done logged, remembered string, width int) string {
 		more = append(more, "app. "+fixed(v.Attenuation.Apparent, 1)+" %")
 	}
 	for _, part := range more {
-		if tables.Width(line)+2+tables.Width(part) > width {
+		longer := line + "  " + part
+		if tables.Width(echoed(longer, done.entry)) > width {
 			break
 		}
-		line += "  " + part
+		line = longer
 	}
-	return line
+	return echoed(line, done.entry)
 }
+
+// echoed ends a line of a round with the number of its entry, which void takes.
+func echoed(line string, e journal.Entry) string { return fmt.Sprintf("%s  #%d", line, e.Number) }

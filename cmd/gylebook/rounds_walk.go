@@ -139,7 +139,8 @@ func (r *round) takeBack(at int) (int, error) {
 	}
 	last := r.done[len(r.done)-1]
 	r.tick()
-	if _, err := r.commitOne(r.ctx, r.store, journal.Void{Entry: last.entry, Reason: "taken back in rounds"}); err != nil {
+	e, err := r.commitOne(r.ctx, r.store, journal.Void{Entry: last.entry, Reason: "taken back in rounds"})
+	if err != nil {
 		if writeFailed(err) {
 			return at, err
 		}
@@ -154,7 +155,7 @@ func (r *round) takeBack(at int) (int, error) {
 	}
 	if r.forMachines() {
 		r.records = slices.DeleteFunc(r.records, func(rec tables.Record) bool { return rec.Get("entry") == int(last.entry) })
-	} else if _, err := fmt.Fprintf(r.out, "%s  taken back: %s\n", r.stops[last.stop].name(), last.text); err != nil {
+	} else if _, err := fmt.Fprintln(r.out, echoed(r.stops[last.stop].name()+"  taken back: "+last.text, e)); err != nil {
 		return at, err
 	}
 	return last.stop, nil

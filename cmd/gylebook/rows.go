@@ -62,7 +62,7 @@ var columnMeans = map[string]string{
 func (b *bench) rows(c *cli.Context, job rowsJob) error {
 	switch {
 	case c.Args().Len() > 0:
-		return usageError("leave them out, or leave --rows out", "read %d values beside --rows, wanted none: they come from the file", c.Args().Len())
+		return usageError("leave them out, or leave --rows out", "read %s beside --rows, wanted none: they come from the file", count(c.Args().Len(), "value", "values"))
 	case b.set.format == tables.Markdown:
 		return usageError("leave --format out for separated values", "--format markdown: rows are separated values or, with --json, JSON Lines")
 	case b.set.explain:
@@ -117,7 +117,7 @@ func (b *bench) rows(c *cli.Context, job rowsJob) error {
 		b.note("note: whole numbers from 2 to 30 are read as points, 12 as SG 1.012; for degrees Plato add --scale plato")
 	}
 	if sum.Refused > 0 {
-		say(b.err, fmt.Sprintf("%d of %d rows refused; the first, line %d", sum.Refused, sum.Rows, sum.First.Line), sum.First.Err)
+		say(b.err, fmt.Sprintf("%d of %s refused; the first, line %d", sum.Refused, count(sum.Rows, "row", "rows"), sum.First.Line), sum.First.Err)
 		return errShown
 	}
 	if sum.Rows == 0 {

@@ -22,7 +22,7 @@ var selfcheckColumns = []string{"source", "rows", "worst", "tolerance", "passed"
 
 func (b *bench) selfcheck(c *cli.Context) error {
 	if c.Args().Len() > 0 {
-		return usageError("", "read %d values, wanted none; usage: gylebook selfcheck", c.Args().Len())
+		return usageError("", "read %s, wanted none; usage: gylebook selfcheck", count(c.Args().Len(), "value", "values"))
 	}
 	outcomes, err := selfcheck.Run(selfcheck.Offered())
 	if err != nil {
@@ -65,8 +65,8 @@ func selfcheckSheet(outcomes []selfcheck.Outcome) (sheet, []string) {
 			s.records = append(s.records, record(selfcheckColumns, []any{
 				o.Source, o.Rows, o.Worst, o.Tolerance, o.Passed, o.Relation, o.Compared, o.Unit,
 			}))
-			s.explain = append(s.explain, fmt.Sprintf("%s, %s by %s %s: %d rows, worst %.2g for a tolerance of %.2g %s",
-				o.Source, o.Compared, o.Kind, o.Relation, o.Rows, o.Worst, o.Tolerance, o.Unit))
+			s.explain = append(s.explain, fmt.Sprintf("%s, %s by %s %s: %s, worst %.2g for a tolerance of %.2g %s",
+				o.Source, o.Compared, o.Kind, o.Relation, count(o.Rows, "row", "rows"), o.Worst, o.Tolerance, o.Unit))
 		}
 		rows += n
 		t.Rows = append(t.Rows, []string{source, strconv.Itoa(checks), strconv.Itoa(n), verdict})

@@ -48,5 +48,5 @@ func (b *bench) sub(parent string, cmd *cli.Command, examples string, action fun
 func wanted(c *cli.Context, what string) error {
 	name := strings.TrimPrefix(c.Command.HelpName, "gylebook ")
 	usage := strings.TrimSpace("gylebook " + name + " " + c.Command.ArgsUsage)
-	return usageError("", "read %d values, wanted %s; usage: %s", c.Args().Len(), what, usage)
+	return usageError("", "read %s, wanted %s; usage: %s", count(c.Args().Len(), "value", "values"), what, usage)
 }

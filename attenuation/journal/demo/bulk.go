@@ -28,7 +28,7 @@ func Bulk(ctx context.Context, store journal.Store, batches, readings int) error
 	if n, _, err := store.Head(ctx); err != nil {
 		return err
 	} else if n > 0 {
-		return fmt.Errorf("%w: it has %d entries", journal.ErrNotEmpty, n)
+		return fmt.Errorf("%w: entry %d is the last", journal.ErrNotEmpty, n)
 	}
 	bodies := []journal.Body{instruments()[0].body}
 	hydrometer := bodies[0].(journal.Instrument)

@@ -47,7 +47,7 @@ func Write(ctx context.Context, store journal.Store) (Summary, error) {
 				return nil, err
 			}
 			if n != int64(start) {
-				return nil, fmt.Errorf("%w: it has %d entries, wanted %d", journal.ErrNotEmpty, n, start)
+				return nil, fmt.Errorf("%w: entry %d is the last, wanted %d", journal.ErrNotEmpty, n, start)
 			}
 			return bodies, nil
 		})

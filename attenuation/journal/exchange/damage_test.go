@@ -166,7 +166,7 @@ func TestDifferencesWithReplicatesInTheJournal(t *testing.T) {
 func TestOwnWholeNumbers(t *testing.T) {
 	from := newJournals(t).empty()
 	first := og("B-1", "1050", "sg")
-	appendAll(t, from, batch("B-1", "T1"), first, reading("B-1", 24, "1048", "sg", "20"), reading("B-1", 48, "999", "sg", "20"))
+	appendAll(t, from, batch("B-1", "T1"), first, reading("B-1", 24, "1048", "sg", "20"), reading("B-1", 96, "999", "sg", "20"))
 	for _, p := range exchange.Profiles() {
 		file := readings(t, from, p)
 		to := newJournals(t).empty()

@@ -4,6 +4,7 @@ import (
 	"context"
 	"errors"
 	"fmt"
+	"iter"
 	"slices"
 	"strings"
 
@@ -12,96 +13,145 @@ import (
 
 // draft turns a plan into entries, with the journal at hand.
 type draft struct {
-	p       *plan
-	r       journal.Reader
-	report  Report
-	head    int64
-	list    []*journal.InstrumentRecord
-	tools   map[string]string // instruments by id: "" or why it cannot be used
-	batches map[string]*target
-	order   []string            // of batches, as they appear
-	vessels map[string][]string // open batches
-	fate    []fate              // of the rows
-	out     []journal.Body
-	used    []string // ids of batches, also void ones
-	made    []string // ids of batches
+	p        *plan
+	r        journal.Reader
+	report   Report
+	head     int64
+	list     []*journal.InstrumentRecord
+	tools    map[string]string // instruments by id: "" or why it cannot be used
+	tooled   []journal.Instrument
+	targets  []target            // of the batches of the file
+	others   map[string]*target  // further batches, of which only vessels are named
+	order    []string            // of those
+	vessels  map[string][]string // open batches
+	homes    map[string]string   // the batch of rows that name a vessel alone
+	housed   map[string]*rowList // those rows, by batch
+	used     []string            // ids of batches, also void ones
+	repeated []uint64            // a bit for each row that is passed over
+	blamed   int64               // the last row that was held for one after it
 }
 
 // target is a batch that readings go to.
 type target struct {
 	why  string // it cannot take readings
 	made bool
-	rows []int32
+	bare bool // made without a vessel
 }
 
 func newDraft(p *plan, r journal.Reader) *draft {
 	report := p.report
 	report.Refused, report.Notes = slices.Clone(report.Refused), slices.Clone(report.Notes)
 	return &draft{
-		p: p, r: r, report: report,
-		tools: make(map[string]string), batches: make(map[string]*target), fate: make([]fate, len(p.rows)),
+		p: p, r: r, report: report, tools: make(map[string]string), targets: make([]target, len(p.order)),
+		others: make(map[string]*target), homes: make(map[string]string), housed: make(map[string]*rowList),
 	}
 }
 
-// bodies returns the entries to be, or ErrRefused.
-func (d *draft) bodies(ctx context.Context) ([]journal.Body, error) {
+// check looks at every row with the journal at hand, or returns ErrRefused.
+func (d *draft) check(ctx context.Context) error {
 	var err error
 	if d.head, _, err = d.r.Head(ctx); err != nil {
-		return nil, err
+		return err
 	}
-	d.out = make([]journal.Body, 0, len(d.p.rows)+len(d.p.reasons))
 	if err := d.instruments(ctx); err != nil {
-		return nil, err
+		return err
 	}
-	for _, id := range d.p.order {
-		if _, err := d.target(ctx, id); err != nil {
-			return nil, err
+	for i, id := range d.p.order {
+		if err := d.aim(ctx, id, &d.targets[i]); err != nil {
+			return err
 		}
 	}
 	if err := d.settle(ctx); err != nil {
-		return nil, err
+		return err
 	}
-	for i := range d.p.rows {
-		if i&1023 == 0 && ctx.Err() != nil {
-			return nil, ctx.Err()
-		}
-		if err := d.row(ctx, i); err != nil {
-			return nil, err
+	for _, vessel := range d.p.vessels {
+		if err := d.house(ctx, vessel); err != nil {
+			return err
 		}
 	}
 	if err := d.judge(ctx); err != nil {
-		return nil, err
+		return err
 	}
-	for i := range d.p.rows {
-		d.write(i)
-	}
-	if err := d.report.err(); err != nil {
-		return nil, err
-	}
-	return d.out, nil
+	return d.report.err()
 }
 
-// last is the number of the entry that was appended last.
-func (d *draft) last() int64 { return d.head + int64(len(d.out)) }
-
-// target finds a batch, or makes it.
-func (d *draft) target(ctx context.Context, id string) (*target, error) {
-	if t := d.batches[id]; t != nil {
-		return t, nil
+// bodies gives the entries to be, one by one, after check.
+func (d *draft) bodies() iter.Seq2[journal.Body, error] {
+	return func(yield func(journal.Body, error) bool) {
+		number := d.head
+		put := func(b journal.Body) bool {
+			number++
+			return yield(b, nil)
+		}
+		for _, i := range d.tooled {
+			if !put(i) {
+				return
+			}
+		}
+		for id := range d.made() {
+			o, err := d.opening(id)
+			if err != nil {
+				yield(nil, err)
+				return
+			}
+			if !put(o.batch) {
+				return
+			}
+			for _, g := range o.ogs {
+				if !put(g) {
+					return
+				}
+			}
+		}
+		c, u := &cursor{s: &d.p.rows}, newUnpacker()
+		var row planned
+		for place := int64(0); place < d.p.rows.size(); {
+			record, end, err := c.at(place)
+			if err == nil {
+				err = u.unpack(&row, record)
+			}
+			if err != nil {
+				yield(nil, err)
+				return
+			}
+			place = end
+			if d.passesOver(row.place) {
+				continue
+			}
+			if row.reading.Batch == "" {
+				row.reading.Batch = d.homes[row.reading.Vessel]
+			}
+			if !put(row.reading) || row.void && !put(journal.Void{Entry: number, Reason: row.reason}) {
+				return
+			}
+		}
 	}
-	t := new(target)
-	d.batches[id] = t
-	d.order = append(d.order, id)
+}
+
+func (d *draft) passOver(row int) {
+	if d.repeated == nil {
+		d.repeated = make([]uint64, d.p.kept/64+1)
+	}
+	d.repeated[row/64] |= 1 << (row % 64)
+	d.report.Repeats++
+}
+
+func (d *draft) passesOver(row int) bool {
+	return d.repeated != nil && d.repeated[row/64]&(1<<(row%64)) != 0
+}
+
+// aim finds a batch, or makes it.
+func (d *draft) aim(ctx context.Context, id string, t *target) error {
 	rec, err := d.r.Batch(ctx, id)
 	switch {
 	case errors.Is(err, journal.ErrNotFound):
-		return t, d.makeBatch(ctx, id, t)
+		return d.makeBatch(ctx, id, t)
 	case err != nil:
-		return nil, err
+		return err
 	case rec.Closed != nil:
 		t.why = fmt.Sprintf("batch %s is %v", id, journal.ErrClosed)
 	}
-	return t, nil
+	return nil
 }
 
 func (d *draft) makeBatch(ctx context.Context, id string, t *target) error {
@@ -123,15 +173,18 @@ func (d *draft) makeBatch(ctx context.Context, id string, t *target) error {
 		}
 		return nil
 	}
-	for _, c := range f.conflicts {
-		d.report.refuse(c.Line, c.Reason)
+	if c := d.p.contrary[id]; c != nil {
+		for _, r := range c.list {
+			d.report.refuse(r.Line, r.Reason)
+		}
+		d.report.RefusedCount += c.more
 	}
-	d.report.RefusedCount += f.more
-	if err := f.parse(id, d.p.opt.Location); err != nil {
+	o, err := f.parse(id, d.p.opt.Location)
+	if err != nil {
 		t.why = fmt.Sprintf("batch %s cannot be made: %v", id, err)
 		return nil
 	}
-	for _, g := range f.ogs {
+	for _, g := range o.ogs {
 		if g.Instrument == "" {
 			continue
 		}
@@ -143,8 +196,28 @@ func (d *draft) makeBatch(ctx context.Context, id string, t *target) error {
 	}
 	t.made = true
 	d.report.Batches = append(d.report.Batches, id)
-	d.made = append(d.made, id)
 	return nil
+}
+
+// made runs over the batches that are made, in the order of the file.
+func (d *draft) made() iter.Seq2[string, *target] {
+	return func(yield func(string, *target) bool) {
+		for i, id := range d.p.order {
+			if t := &d.targets[i]; t.made && !yield(id, t) {
+				return
+			}
+		}
+	}
+}
+
+// opening is a batch that is made, after settle.
+func (d *draft) opening(id string) (opening, error) {
+	f := d.p.batches[id]
+	o, err := f.parse(id, d.p.opt.Location)
+	if d.targets[f.place].bare {
+		o.batch.Vessel = ""
+	}
+	return o, err
 }
 
 func nearest(id string, ids []string) string {
@@ -153,70 +226,4 @@ func nearest(id string, ids []string) string {
 		return ""
 	}
 	return "; nearest: " + strings.Join(near, ", ")
-}
-
-// fate is what becomes of a row.
-type fate uint8
-
-const (
-	refused fate = iota
-	repeated
-	accepted
-)
-
-// row refuses one row or hands it to its batch.
-func (d *draft) row(ctx context.Context, i int) error {
-	p := &d.p.rows[i]
-	r := p.body.(journal.Reading)
-	refuse := func(why string) error {
-		d.report.refuse(int(p.line), why)
-		return nil
-	}
-	if r.Batch == "" {
-		id, why, err := d.inVessel(ctx, r.Vessel)
-		if err != nil {
-			return err
-		}
-		if why != "" {
-			return refuse(why)
-		}
-		r.Batch = id
-		p.body = r
-	}
-	t, err := d.target(ctx, r.Batch)
-	if err != nil {
-		return err
-	}
-	if t.why != "" {
-		return refuse(t.why)
-	}
-	if why := d.tools[r.Instrument]; why != "" {
-		return refuse(why)
-	}
-	if err := r.Check(); err != nil {
-		return refuse(err.Error())
-	}
-	if reason, void := d.p.reasons[i]; void {
-		if err := (journal.Void{Entry: 1, Reason: reason}).Check(); err != nil {
-			return refuse(err.Error())
-		}
-	}
-	d.fate[i] = accepted
-	t.rows = append(t.rows, int32(i))
-	return nil
-}
-
-// write appends the entries of an accepted row.
-func (d *draft) write(i int) {
-	switch d.fate[i] {
-	case repeated:
-		d.report.Repeats++
-	case accepted:
-		d.out = append(d.out, d.p.rows[i].body)
-		d.report.Readings++
-		if reason, void := d.p.reasons[i]; void {
-			d.out = append(d.out, journal.Void{Entry: d.last(), Reason: reason})
-			d.report.Voids++
-		}
-	}
 }

@@ -4,9 +4,7 @@ import (
 	"context"
 	"errors"
 	"io"
-	"math"
-	"slices"
-	"strings"
+	"iter"
 	"time"
 
 	"gylebook/attenuation/journal"
@@ -18,6 +16,8 @@ type Options struct {
 	DryRun   bool           // report, and write nothing
 	Create   bool           // make batches and instruments that are not in the journal
 	Location *time.Location // of times without an offset; nil is UTC
+	// Scratch makes a file for rows beyond the first megabyte; nil keeps all in memory.
+	Scratch func() (Scratch, error)
 	// Book makes the book that figures are compared by; nil is journal.NewBook.
 	Book func([]*journal.InstrumentRecord) *journal.Book
 }
@@ -31,66 +31,66 @@ type Options struct {
 // it, and none when an open batch of the journal is in it; the report says so.
 //
 // A row is refused, besides, when it was taken before the pitching, is beyond the
-// range of its instrument or cannot be corrected, and when it rises over the reading
-// before it with nothing added, unless its status says that it was kept.
+// range of its instrument or cannot be corrected. Unless its status says that it was
+// kept, it is refused too when it rises over the reading before it or over the
+// original gravity with nothing added, falls faster than anything ferments, or is far
+// from another of its minute: as a reading that is logged by itself is held.
 //
 // When rows are refused the error is ErrRefused and the report names them. Other
-// errors: those of ReadReadings and of Store.Append. Whatever the error, nothing was
-// written. In memory are the entries to be and the digits of the file's derived
-// figures, packed; the text is not.
+// errors: those of ReadReadings, of Options.Scratch and of Store.AppendEach. Whatever
+// the error, nothing was written. The file is read once. In memory is what is known
+// of each batch and where its rows are; the rows themselves are in the scratch file,
+// unless they are few.
 func Import(ctx context.Context, store journal.Store, by string, now time.Time, file io.Reader, opt Options) (Report, error) {
 	p, err := read(ctx, store, by, now, file, opt)
+	defer p.rows.close()
 	if err != nil {
 		return p.report, err
 	}
 	var report Report
-	draft := func(r journal.Reader) ([]journal.Body, error) {
+	draft := func(r journal.Reader) (iter.Seq2[journal.Body, error], error) {
 		// A draft may be asked for again: it starts from what was read.
 		d := newDraft(p, r)
-		bodies, err := d.bodies(ctx)
+		err := d.check(ctx)
 		report = d.report
-		return bodies, err
+		if err != nil {
+			return nil, err
+		}
+		return d.bodies(), nil
 	}
 	if opt.DryRun {
 		_, err := draft(store)
 		return report, err
 	}
-	entries, err := store.Append(ctx, by, now, draft)
-	if err == nil && len(entries) > 0 {
-		report.First, report.Last = entries[0].Number, entries[len(entries)-1].Number
-	}
+	first, last, err := store.AppendEach(ctx, by, now, draft)
+	report.First, report.Last = first, last
 	return report, err
 }
 
 // plan is what was read from the file, before the journal is asked.
 type plan struct {
-	by      string
-	now     time.Time
-	opt     Options
-	rows    []planned
-	claims  []byte         // packed
-	reasons map[int]string // of void rows, by place in rows
-	batches map[string]*facts
-	order   []string // batches as they appear
-	uses    map[string]*use
-	used    []string // instruments as they appear
-	texts   map[string]string
-	report  Report
-}
-
-// planned is one row. Its body is boxed once and goes into the journal as it is.
-type planned struct {
-	body   journal.Body // a journal.Reading
-	line   int32
-	claim  int32 // place in claims, -1: none
-	own    bool  // written by this program
-	failed bool  // status says that it could not be corrected
+	by          string
+	now         time.Time
+	opt         Options
+	rows        spool
+	kept        int  // rows in it
+	claimed     bool // some have figures
+	batches     map[string]*facts
+	order       []string // batches as they appear
+	unnamed     map[string]*rowList
+	vessels     []string              // of rows that name no batch, as they appear
+	contrary    map[string]*conflicts // of batches
+	conflicts   int                   // in their lists
+	instruments map[string]*use
+	used        []string // instruments as they appear
+	shared      sharer
+	report      Report
 }
 
 func read(ctx context.Context, store journal.Reader, by string, now time.Time, file io.Reader, opt Options) (*plan, error) {
 	p := &plan{
-		by: by, now: now, opt: opt,
-		reasons: make(map[int]string), batches: make(map[string]*facts), uses: make(map[string]*use), texts: make(map[string]string),
+		by: by, now: now, opt: opt, rows: spool{scratch: opt.Scratch}, shared: make(sharer),
+		batches: make(map[string]*facts), unnamed: make(map[string]*rowList), contrary: make(map[string]*conflicts), instruments: make(map[string]*use),
 	}
 	scales, err := scalesOf(ctx, store)
 	if err != nil {
@@ -102,6 +102,7 @@ func read(ctx context.Context, store journal.Reader, by string, now time.Time, f
 	if err != nil {
 		return p, err
 	}
+	var packed []byte
 	for row, err := range in.All() {
 		if p.report.Rows&1023 == 0 && ctx.Err() != nil {
 			return p, ctx.Err()
@@ -114,11 +115,12 @@ func read(ctx context.Context, store journal.Reader, by string, now time.Time, f
 		case err != nil:
 			return p, err
 		default:
-			p.add(row)
+			if packed, err = p.add(row, packed[:0]); err != nil {
+				return p, err
+			}
 		}
 	}
-	p.report.Dialect, p.report.Notes, p.texts = in.Dialect, in.Notes, nil
-	p.rows, p.claims = slices.Clip(p.rows), slices.Clip(p.claims)
+	p.report.Dialect, p.report.Notes, p.shared = in.Dialect, in.Notes, nil
 	return p, nil
 }
 
@@ -134,39 +136,37 @@ func scalesOf(ctx context.Context, r journal.Reader) (map[string]string, error) 
 	return scales, nil
 }
 
-// add keeps a row.
-func (p *plan) add(row *Row) {
+// add keeps a row; buf is room for its short form.
+func (p *plan) add(row *Row, buf []byte) ([]byte, error) {
 	p.report.repair(row.Repairs)
-	r := row.Reading
+	kept := planned{reading: row.Reading, reason: row.Reason, place: p.kept, line: row.Line, own: row.own, failed: row.failed, void: row.Void}
+	r := &kept.reading
 	r.Note = withTaker(r.Note, row.Operator, p.by)
-	for _, s := range []*string{
-		&r.Batch, &r.Vessel, &r.Quality, &r.Gravity.Text, &r.Gravity.Scale, &r.Temp.Text, &r.Temp.Unit, &r.Instrument, &r.Keep, &r.Note,
-	} {
-		*s = p.intern(*s)
+	if c, some := claimOf(row); some {
+		kept.claim, p.claimed = c.pack(nil), true
 	}
-	kept := planned{line: int32(row.Line), claim: -1, own: row.own, failed: row.failed}
-	if c, some := claimOf(row); some && len(p.claims) < math.MaxInt32 {
-		kept.claim = int32(len(p.claims))
-		p.claims = c.pack(p.claims)
+	buf = kept.pack(buf)
+	from := p.rows.size()
+	if err := p.rows.add(buf); err != nil {
+		return buf, err
 	}
-	kept.body = r
-	p.addFacts(row, r)
+	p.kept++
+	p.rowsOf(row, r).add(from, p.rows.size(), r.TakenAt)
 	p.addUse(r)
-	if row.Void {
-		p.reasons[len(p.rows)] = p.intern(row.Reason)
-	}
-	p.rows = append(p.rows, kept)
+	return buf, nil
 }
 
-// intern returns one copy of a text that comes again and again. A cell is part of
-// the string of its whole row, which what is kept must not hold.
-func (p *plan) intern(s string) string {
-	if one, ok := p.texts[s]; ok {
-		return one
+// rowsOf is the list that a row belongs on, with what it says about its batch kept.
+func (p *plan) rowsOf(row *Row, r *journal.Reading) *rowList {
+	if r.Batch != "" {
+		return &p.addFacts(row, r).rows
 	}
-	s = strings.Clone(s)
-	if len(p.texts) < 1<<16 {
-		p.texts[s] = s
+	l := p.unnamed[r.Vessel]
+	if l == nil {
+		l = new(rowList)
+		vessel := p.shared.share(r.Vessel)
+		p.unnamed[vessel] = l
+		p.vessels = append(p.vessels, vessel)
 	}
-	return s
+	return l
 }

@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"slices"
 	"strconv"
+	"strings"
 	"time"
 
 	"gylebook/attenuation/journal"
@@ -22,7 +23,7 @@ type use struct {
 
 func (u *use) add(g journal.Typed, at time.Time) {
 	if u.steps == nil {
-		u.scale, u.since, u.steps = g.Scale, at, make(map[string]int)
+		u.scale, u.since, u.steps = strings.Clone(g.Scale), at, make(map[string]int)
 	}
 	if at.Before(u.since) {
 		u.since = at
@@ -33,15 +34,16 @@ func (u *use) add(g journal.Typed, at time.Time) {
 	}
 }
 
-func (p *plan) addUse(r journal.Reading) {
+func (p *plan) addUse(r *journal.Reading) {
 	if r.Instrument == "" {
 		return
 	}
-	u := p.uses[r.Instrument]
+	u := p.instruments[r.Instrument]
 	if u == nil {
 		u = new(use)
-		p.uses[r.Instrument] = u
-		p.used = append(p.used, r.Instrument)
+		id := strings.Clone(r.Instrument)
+		p.instruments[id] = u
+		p.used = append(p.used, id)
 	}
 	u.add(r.Gravity, r.TakenAt)
 }
@@ -79,7 +81,7 @@ func (d *draft) instruments(ctx context.Context) error {
 		}
 	}
 	for _, id := range d.p.used {
-		d.instrument(id, d.p.uses[id])
+		d.instrument(id, d.p.instruments[id])
 	}
 	return nil
 }
@@ -106,7 +108,7 @@ func (d *draft) instrument(id string, u *use) string {
 	}
 	d.tools[id] = ""
 	d.report.Instruments = append(d.report.Instruments, id)
-	d.out = append(d.out, body)
-	d.list = append(d.list, &journal.InstrumentRecord{Instrument: body, Number: d.last()})
+	d.tooled = append(d.tooled, body)
+	d.list = append(d.list, &journal.InstrumentRecord{Instrument: body, Number: d.head + int64(len(d.tooled))})
 	return ""
 }

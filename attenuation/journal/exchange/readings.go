@@ -91,6 +91,18 @@ func inTime(list []numbered) []numbered {
 	return list
 }
 
+// minuteEnd returns n, or so many more that readings of one minute stay together,
+// for their mean is used.
+func minuteEnd(all []numbered, n int) int {
+	if n >= len(all) {
+		return len(all)
+	}
+	for n < len(all) && floorMinute(all[n].Body.TakenAt) == floorMinute(all[n-1].Body.TakenAt) {
+		n++
+	}
+	return n
+}
+
 // batchCells are the last four columns, the same for every reading of a batch.
 func batchCells(rec *journal.Record, mark rune) [4]string {
 	pitched := ""

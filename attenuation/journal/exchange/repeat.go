@@ -24,25 +24,36 @@ func keyOf(r journal.Reading, void bool) (key, bool) {
 }
 
 // repeats finds the rows of a batch that are there already, in the journal or in a
-// row before.
-func (d *draft) repeats(t *target, rec *journal.Record) {
-	seen := make(map[key]struct{}, len(rec.Readings)+len(t.rows))
-	for _, n := range rec.Readings {
-		if k, ok := keyOf(n.Body, n.Void); ok {
-			seen[k] = struct{}{}
+// row with an earlier time. Rows are asked about in the order of their time, so that
+// only what was read in one minute is in memory.
+type repeats struct {
+	here   []numbered // of the journal, in time, from the minute on
+	minute int64
+	seen   map[key]struct{}
+}
+
+// found reports whether a row is a repeat.
+func (q *repeats) found(row *planned) bool {
+	if m := floorMinute(row.reading.TakenAt); q.seen == nil || m != q.minute {
+		if q.seen == nil {
+			q.seen = make(map[key]struct{})
+		}
+		clear(q.seen)
+		q.minute = m
+		for len(q.here) > 0 && floorMinute(q.here[0].Body.TakenAt) <= m {
+			if k, ok := keyOf(q.here[0].Body, q.here[0].Void); ok && k.minute == m {
+				q.seen[k] = struct{}{}
+			}
+			q.here = q.here[1:]
 		}
 	}
-	for _, i := range t.rows {
-		_, void := d.p.reasons[int(i)]
-		k, ok := keyOf(d.p.rows[i].body.(journal.Reading), void)
-		if _, repeat := seen[k]; ok && repeat {
-			d.fate[i] = repeated
-			continue
-		}
-		if ok {
-			seen[k] = struct{}{}
-		}
+	k, ok := keyOf(row.reading, row.void)
+	if !ok {
+		return false
 	}
+	_, repeat := q.seen[k]
+	q.seen[k] = struct{}{}
+	return repeat
 }
 
 func floorMinute(t time.Time) int64 {

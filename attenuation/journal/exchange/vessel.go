@@ -12,9 +12,9 @@ import (
 // one. When the earlier of them ended is not known from their readings alone.
 func (d *draft) settle(ctx context.Context) error {
 	newest := make(map[string]string)
-	for _, id := range d.made {
-		v := strings.ToLower(d.p.batches[id].body.Vessel)
-		if had := newest[v]; had == "" || d.p.batches[id].later(d.p.batches[had]) {
+	for id := range d.made() {
+		v := strings.ToLower(d.p.batches[id].vessel)
+		if had := newest[v]; had == "" || d.later(id, had) {
 			newest[v] = id
 		}
 	}
@@ -28,21 +28,17 @@ func (d *draft) settle(ctx context.Context) error {
 			here[strings.ToLower(v)] = strings.Join(ids, " and ")
 		}
 	}
-	var older, ousted []string
-	for _, id := range d.made {
-		f := d.p.batches[id]
-		switch v := strings.ToLower(f.body.Vessel); {
+	var older, ousted named
+	for id, t := range d.made() {
+		vessel := d.p.batches[id].vessel
+		switch v := strings.ToLower(vessel); {
 		case v == "":
 		case here[v] != "":
-			ousted = append(ousted, fmt.Sprintf("%s (%s holds %s)", id, f.body.Vessel, here[v]))
-			f.body.Vessel = ""
+			ousted.add("%s (%s holds %s)", id, vessel, here[v])
+			t.bare = true
 		case newest[v] != id:
-			older = append(older, fmt.Sprintf("%s (%s)", id, f.body.Vessel))
-			f.body.Vessel = ""
-		}
-		d.out = append(d.out, f.body)
-		for _, g := range f.ogs {
-			d.out = append(d.out, g)
+			older.add("%s (%s)", id, vessel)
+			t.bare = true
 		}
 	}
 	d.bare(older, "for a newer one of the file has it")
@@ -50,29 +46,42 @@ func (d *draft) settle(ctx context.Context) error {
 	return nil
 }
 
-// later reports whether f began after g, by its readings.
-func (f *facts) later(g *facts) bool {
-	if !f.body.Opened.Equal(g.body.Opened) {
-		return f.body.Opened.After(g.body.Opened)
+// later reports whether one batch that is made began after another, by its readings.
+func (d *draft) later(id, than string) bool {
+	f, g := d.p.batches[id], d.p.batches[than]
+	a, b := f.opened(d.p.opt.Location), g.opened(d.p.opt.Location)
+	if !a.Equal(b) {
+		return a.After(b)
 	}
-	return f.last.After(g.last)
+	return f.last > g.last
+}
+
+// named counts things and names the first few.
+type named struct {
+	names []string
+	all   int
+}
+
+func (l *named) add(format string, args ...any) {
+	if l.all++; l.all <= 12 {
+		l.names = append(l.names, fmt.Sprintf(format, args...))
+	}
 }
 
 // bare notes the batches that are made without a vessel.
-func (d *draft) bare(list []string, why string) {
-	const named = 12
+func (d *draft) bare(list named, why string) {
 	what := "batches are"
-	switch len(list) {
+	switch list.all {
 	case 0:
 		return
 	case 1:
 		what = "batch is"
 	}
-	names := strings.Join(list[:min(named, len(list))], ", ")
-	if more := len(list) - named; more > 0 {
+	names := strings.Join(list.names, ", ")
+	if more := list.all - len(list.names); more > 0 {
 		names += fmt.Sprintf(" and %d more", more)
 	}
-	d.report.Notes = append(d.report.Notes, fmt.Sprintf("%d %s made without a vessel, %s: %s", len(list), what, why, names))
+	d.report.Notes = append(d.report.Notes, fmt.Sprintf("%d %s made without a vessel, %s: %s", list.all, what, why, names))
 }
 
 // openVessels finds which open batches of the journal are in which vessel.
@@ -90,6 +99,26 @@ func (d *draft) openVessels(ctx context.Context) error {
 		d.vessels[v] = append(d.vessels[v], rec.Batch.ID)
 	}
 	return nil
+}
+
+// house finds the batch of rows that name a vessel alone, or refuses them.
+func (d *draft) house(ctx context.Context, vessel string) error {
+	rows := d.p.unnamed[vessel]
+	id, why, err := d.inVessel(ctx, vessel)
+	if err != nil {
+		return err
+	}
+	if why != "" {
+		return d.refuseAll([]*rowList{rows}, why, &cursor{s: &d.p.rows}, newUnpacker())
+	}
+	d.homes[vessel], d.housed[id] = id, rows
+	if d.p.batches[id] != nil {
+		return nil // found already
+	}
+	t := new(target)
+	d.others[id] = t
+	d.order = append(d.order, id)
+	return d.aim(ctx, id, t)
 }
 
 // inVessel returns the one open batch in a vessel, or why there is none.

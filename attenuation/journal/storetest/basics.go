@@ -177,11 +177,12 @@ func testClosedStore(t *testing.T, s journal.Store) {
 	}
 	ctx := context.Background()
 	_, appendErr := appendAs(s, operator, reading("B-1", 3, 9))
+	_, _, eachErr := appendEach(s, nil, reading("B-1", 3, 9))
 	_, batchErr := s.Batch(ctx, "B-1")
 	_, verifyErr := journal.VerifyAll(ctx, s)
 	_, restoreErr := s.Restore(ctx, func(func(journal.Entry, error) bool) {})
 	for what, err := range map[string]error{
-		"append": appendErr, "batch": batchErr, "verify": verifyErr, "restore": restoreErr, "backup": s.Backup(ctx, t.TempDir()+"/copy"),
+		"append": appendErr, "append each": eachErr, "batch": batchErr, "verify": verifyErr, "restore": restoreErr, "backup": s.Backup(ctx, t.TempDir()+"/copy"),
 	} {
 		if !errors.Is(err, journal.ErrClosed) {
 			t.Errorf("%s of a closed store: %v, wanted %v", what, err, journal.ErrClosed)

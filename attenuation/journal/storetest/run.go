@@ -24,6 +24,10 @@ func Run(t *testing.T, open func(t *testing.T) journal.Store) {
 		{"all or none", testAllOrNone},
 		{"draft", testDraft},
 		{"draft's own view", testDraftView},
+		{"one by one", testEach},
+		{"one by one, all or none", testEachAllOrNone},
+		{"one by one, own view", testEachView},
+		{"one by one, cancelled", testEachCancelled},
 		{"ids are never used again", testIDs},
 		{"what is not there", testNotFound},
 		{"closed batch", testClosed},
@@ -40,6 +44,8 @@ func Run(t *testing.T, open func(t *testing.T) journal.Store) {
 		{"instruments", testInstruments},
 		{"open", testOpen},
 		{"newest readings of open batches", testOpenLast},
+		{"places of open batches", testOpenPlaces},
+		{"lean batches", testLean},
 		{"filters", testFilters},
 		{"finished", testFinished},
 		{"last by", testLastBy},
@@ -70,6 +76,7 @@ func RunShared(t *testing.T, open func(t *testing.T, place string) journal.Store
 		{"two stores", testTwoStores},
 		{"two writers", testTwoWriters},
 		{"reader beside a writer", testReaderBeside},
+		{"reader beside many", testReaderBesideEach},
 	} {
 		t.Run(c.name, func(t *testing.T) {
 			place := filepath.Join(t.TempDir(), "journal")
