@@ -8,6 +8,7 @@ import (
 	"regexp"
 	"strconv"
 	"strings"
+	"sync"
 )
 
 // WriteCSV writes the records as RFC 4180 CSV with "\n" line ends. The header
@@ -119,11 +120,11 @@ func csvCell(f Field) (string, error) {
 	return "", errValue(f)
 }
 
-var signedNumber = regexp.MustCompile(`^[+-][0-9]+([.,][0-9]+)?$`)
+var signedNumber = sync.OnceValue(func() *regexp.Regexp { return regexp.MustCompile(`^[+-][0-9]+([.,][0-9]+)?$`) })
 
 // guard keeps a spreadsheet from running a text cell as a formula.
 func guard(s string) string {
-	if s == "" || !strings.ContainsRune("=+-@\t\r", rune(s[0])) || signedNumber.MatchString(s) {
+	if s == "" || !strings.ContainsRune("=+-@\t\r", rune(s[0])) || signedNumber().MatchString(s) {
 		return s
 	}
 	return "'" + s

@@ -34,8 +34,12 @@ var rooms = []room{
 	{path: "attenuation/cause", rank: 7},
 	{path: "attenuation/curve", rank: 5},
 	{path: "attenuation/outlook", rank: 7},
-	{path: "tables", rank: 0, only: []string{"cmd/gylebook"}}, // neutral rows in, so no room of ours below it
-	{path: "tables/dialect", rank: 0},                         // the same for what comes in
+	{path: "tables", rank: 0, only: []string{"cmd/gylebook", "tables/chart", "tables/page", "tables/report", "tables/web"}}, // neutral rows in, so no room of ours below it
+	{path: "tables/dialect", rank: 0}, // the same for what comes in
+	{path: "tables/chart", rank: 1, only: []string{"cmd/gylebook"}},
+	{path: "tables/page", rank: 1},
+	{path: "tables/report", rank: 2, only: []string{"cmd/gylebook"}},
+	{path: "tables/web", rank: 2, only: []string{"cmd/gylebook"}},
 	{path: "cmd/backtest", rank: 9},
 	{path: "cmd/gylebook", rank: 9},
 }
@@ -49,6 +53,14 @@ var fences = []fence{
 	{of: "github.com/shopspring/decimal", within: []string{"gravity/asread"}},
 	{of: "github.com/urfave/cli/v2", within: []string{"cmd"}},
 	{of: "github.com/olekukonko/tablewriter", within: []string{"tables"}},
+	{of: "gonum.org/v1/plot", within: []string{"tables/chart"}},
+	{of: "git.sr.ht/~sbinet/gg", within: []string{"tables/chart"}},
+	{of: "golang.org/x/image", within: []string{"tables/chart"}},
+	{of: "codeberg.org/go-fonts", within: []string{"tables/chart"}},
+	{of: "html/template", within: []string{"tables"}},
+	{of: "net/http", outside: []string{"tables", "cmd"}, except: []string{"tables/web", "cmd/gylebook"}}, // in formulas no net at all, below
+	{of: "golang.org/x/crypto", within: []string{"tables/web"}},
+	{of: "github.com/chromedp", within: []string{"cmd/gylebook"}}, // in tests
 	{of: "modernc.org/sqlite", within: []string{"attenuation/journal/sqlstore"}},
 	{of: "os", outside: formulas, except: []string{"attenuation/journal/sqlstore"}, testsFree: true}, // os/exec with it
 	{of: "time", outside: formulas, except: []string{"attenuation/journal", "attenuation/season", "attenuation/cause", "attenuation/outlook"}, testsFree: true},

@@ -48,6 +48,8 @@ func TestFenceFaults(t *testing.T) {
 		{"os in a formula", "tempcorr/float.go", "os", "tempcorr/float.go imports os"},
 		{"os/exec in a formula", "gravity/water.go", "os/exec", "gravity/water.go imports os/exec"},
 		{"net/http in a formula", "attenuation/selfcheck/rows.go", "net/http", "has no place there"},
+		{"net/http in the page at the tank", "tables/web/server.go", "net/http", ""},
+		{"net/http in a fragment", "tables/page/ladder.go", "net/http", "has no place there"},
 		{"clock in a formula", "attenuation/abv.go", "time", "has no place there"},
 		{"clock in a test of a formula", "attenuation/abv_test.go", "time", ""},
 		{"clock in the journal", "attenuation/journal/entry.go", "time", ""},

@@ -53,7 +53,7 @@ func batchBy(ctx context.Context, r journal.Reader, name string) (*journal.Recor
 	if err == nil && rec.Closed == nil || err != nil && !errors.Is(err, journal.ErrNotFound) {
 		return rec, err
 	}
-	open, err := r.OpenLast(ctx, 0)
+	open, err := r.OpenPlaces(ctx)
 	if err != nil {
 		return nil, err
 	}

@@ -25,6 +25,7 @@ func (b *bench) logCommand() *cli.Command {
 			&cli.BoolFlag{Name: "gassy", Usage: "the sample was not degassed"},
 			&cli.StringFlag{Name: "keep", Usage: "`REASON` to keep a reading that is doubted, as suspect"},
 			&cli.StringFlag{Name: "note", Usage: "`TEXT` anything else"},
+			&cli.BoolFlag{Name: "dry-run", Usage: "judge it and show what it would mean; nothing is written"},
 		},
 	}, `gylebook log T4 1.012 18
 		gylebook log B26-014 3.1P 18C --taken "yesterday 18:30"
@@ -37,7 +38,7 @@ func (b *bench) log(c *cli.Context) error {
 	}
 	in := toLog{
 		quality: journal.Exact, instrument: c.String("instrument"), gassy: c.Bool("gassy"),
-		keep: c.String("keep"), note: c.String("note"),
+		keep: c.String("keep"), note: c.String("note"), dry: c.Bool("dry-run"),
 	}
 	if c.Bool("estimated") {
 		in.quality = journal.Estimated
@@ -51,7 +52,7 @@ func (b *bench) log(c *cli.Context) error {
 		done := 0
 		refused := b.each(c, true, func(fields []string) error {
 			if len(fields) != 3 {
-				return usageError("", "read %d values, wanted three; usage: gylebook log %s", len(fields), c.Command.ArgsUsage)
+				return usageError("", "read %s, wanted three; usage: gylebook log %s", count(len(fields), "value", "values"), c.Command.ArgsUsage)
 			}
 			one := in
 			one.name, one.reading, one.temp = fields[0], fields[1], fields[2]
@@ -92,7 +93,7 @@ func (b *bench) logShow(sh *sheet, l logged) error {
 	}
 	one := sheet{name: "log", notes: l.notes}
 	if !l.repeat {
-		one.ladder = &tables.Ladder{Answer: logLines(l)}
+		one.ladder, one.logged = &tables.Ladder{Answer: logLines(l)}, &l
 		if b.set.explain {
 			one.explain = explainValue(l.value)
 		}
@@ -107,6 +108,12 @@ func (b *bench) logShow(sh *sheet, l logged) error {
 
 // logLines are one or two lines on a reading: what was read, what it means.
 func logLines(l logged) []string {
+	numbered := func(line string) string {
+		if l.entry.Number == unwritten {
+			return line + "   nothing written"
+		}
+		return numberedLine(line, l.entry)
+	}
 	rec, one := l.view.Record, l.value
 	name := strings.TrimSpace(one.Source.Vessel + " " + rec.Batch.ID + " " + rec.Batch.Product)
 	with := ""
@@ -115,7 +122,7 @@ func logLines(l logged) []string {
 	}
 	if one.Err != nil {
 		first := fmt.Sprintf("%s   read %s at %s%s, not corrected", name, one.Source.Gravity.Text, one.Source.Temp.Text, with)
-		return []string{first, numberedLine(one.Err.Error(), l.entry)}
+		return []string{first, numbered(one.Err.Error())}
 	}
 	value := fixed(float64(one.Result.SG), 4)
 	if scale := one.Typed.Scale; scale.IsMass() {
@@ -128,7 +135,7 @@ func logLines(l logged) []string {
 	first := fmt.Sprintf("%s   %s (read %s at %s%s)", name, value, read, one.Temp.ReadAs(), with)
 	var parts []string
 	if one.Suspect { // figures leave it out
-		return []string{first, numberedLine("kept as suspect: "+one.Source.Keep, l.entry)}
+		return []string{first, numbered("kept as suspect: " + one.Source.Keep)}
 	}
 	if f, ok := fallTo(l.view, one); ok {
 		word := "fell"
@@ -142,7 +149,7 @@ func logLines(l logged) []string {
 	} else {
 		parts = append(parts, "apparent "+none+" ("+cmp.Or(one.Why, "not known")+")")
 	}
-	return []string{first, numberedLine(strings.Join(parts, "   "), l.entry)}
+	return []string{first, numbered(strings.Join(parts, "   "))}
 }
 
 // hoursText is a span of time in hours, below one in minutes.

@@ -24,6 +24,7 @@ type toLog struct {
 	instrument    string // "" chooses one
 	gassy         bool
 	keep, note    string
+	dry           bool           // judge only, write nothing
 	before        *journal.Event // what was added before it and is to be logged with it; nil is nothing
 }
 
@@ -61,16 +62,21 @@ func (b *bench) logOne(ctx context.Context, s journal.Store, in toLog) (logged, 
 	if err != nil {
 		return logged{}, err
 	}
-	return b.logTyped(ctx, s, in.name, r, in.before)
+	return b.logTyped(ctx, s, in.name, r, in.before, in.dry)
 }
+
+// unwritten is the number of an entry that was judged and not written: after all
+// that are.
+const unwritten = math.MaxInt64
 
 // logTyped writes one reading of the vessel or batch with this name, judged against
 // what the journal holds at that moment, and with it what was added before. A
-// reading that is held is a *journal.Hold, and nothing is written.
-func (b *bench) logTyped(ctx context.Context, s journal.Store, name string, r journal.Reading, before *journal.Event) (logged, error) {
+// reading that is held is a *journal.Hold, and nothing is written. With dry nothing
+// ever is, and the entry has the number unwritten.
+func (b *bench) logTyped(ctx context.Context, s journal.Store, name string, r journal.Reading, before *journal.Event, dry bool) (logged, error) {
 	var done logged
 	var at journal.Situation
-	entries, err := b.commit(ctx, s, func(view journal.Reader) ([]journal.Body, error) {
+	draft := func(view journal.Reader) ([]journal.Body, error) {
 		var err error
 		if at, err = situationOf(ctx, view, name, b.set.now); err != nil {
 			return nil, err
@@ -103,8 +109,16 @@ func (b *bench) logTyped(ctx context.Context, s journal.Store, name string, r jo
 			done.notes = append(done.notes, method.Note{Code: method.WithReason, Text: "nothing about it is doubted: it counts, and the reason is kept as its note"})
 			r.Note, r.Keep = strings.TrimPrefix(r.Note+"; "+r.Keep, "; "), ""
 		}
-		return append(bodies, r), nil
-	})
+		return append(bodies, r), r.Check()
+	}
+	var entries []journal.Entry
+	var err error
+	if dry {
+		_, err = draft(s)
+		entries = []journal.Entry{{Number: unwritten, RecordedAt: b.set.now, By: b.by(), Body: r}}
+	} else {
+		entries, err = b.commit(ctx, s, draft)
+	}
 	var hold *journal.Hold
 	if errors.As(err, &hold) && hold.Code == journal.HoldDuplicate {
 		done.repeat = true
@@ -123,7 +137,7 @@ func (b *bench) logTyped(ctx context.Context, s journal.Store, name string, r jo
 // situationOf is what a reading of the vessel or batch with this name is judged
 // against, without the other open batches.
 func situationOf(ctx context.Context, view journal.Reader, name string, now time.Time) (journal.Situation, error) {
-	open, err := view.OpenLast(ctx, 0)
+	open, err := view.OpenPlaces(ctx)
 	if err != nil {
 		return journal.Situation{}, err
 	}

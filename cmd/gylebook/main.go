@@ -15,6 +15,10 @@ func main() {
 	defer stop()
 	// A read that waits for input does not see ctx: the interrupt ends the program.
 	context.AfterFunc(ctx, func() {
+		if gentle.Load() {
+			stop() // a second interrupt ends the program at once
+			return
+		}
 		unfinished.remove()
 		os.Exit(exitInterrupted)
 	})

@@ -23,11 +23,17 @@ type sheet struct {
 	more    []*tables.Ladder // further blocks like the first
 	tables  []tables.Table
 	explain []string
+	logged  *logged // the reading that it is about, nil for none
 }
 
 // print writes s in the format asked for. Notes go to stderr, save in JSON,
 // which holds them.
 func (b *bench) print(s sheet) error {
+	if b.take != nil {
+		s.notes = slices.Concat(b.notes, s.notes)
+		b.take(s)
+		return nil
+	}
 	switch b.set.format {
 	case tables.JSON, tables.CSV:
 		d := tables.Document{

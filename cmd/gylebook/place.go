@@ -6,6 +6,7 @@ import (
 	"io/fs"
 	"os/user"
 	"path/filepath"
+	"runtime/debug"
 	"strings"
 	"time"
 
@@ -40,6 +41,9 @@ func (b *bench) by() string {
 
 // withJournal hands the journal to do. A journal that is not there is refused.
 func (b *bench) withJournal(ctx context.Context, do func(journal.Store) error) error {
+	if b.held != nil {
+		return do(b.held)
+	}
 	s, err := sqlstore.Open(ctx, b.place())
 	if errors.Is(err, fs.ErrNotExist) {
 		return &exitError{exitNoInput, "no journal at " + b.place(), "gylebook journal init makes one; --journal or GYLEBOOK_JOURNAL names another"}
@@ -60,6 +64,16 @@ func (b *bench) writing(ctx context.Context, do func(journal.Store) error) error
 		b.note("note: new journal at %s", b.place())
 	}
 	return closing(s, do)
+}
+
+// hasty lets more memory lie before it is collected while a command runs that reads
+// much, keeps little and ends soon. A server keeps its own measure.
+func (b *bench) hasty() (end func()) {
+	if b.held != nil {
+		return func() {}
+	}
+	usual := debug.SetGCPercent(400)
+	return func() { debug.SetGCPercent(usual) }
 }
 
 func closing(s journal.Store, do func(journal.Store) error) error {

@@ -32,7 +32,7 @@ func (b *bench) roundsCommand() *cli.Command {
 
 func (b *bench) rounds(c *cli.Context) error {
 	if c.Args().Len() > 0 {
-		return usageError("for one reading: gylebook log VESSEL READING TEMP", "read %d values, wanted none; usage: gylebook rounds", c.Args().Len())
+		return usageError("for one reading: gylebook log VESSEL READING TEMP", "read %s, wanted none; usage: gylebook rounds", count(c.Args().Len(), "value", "values"))
 	}
 	return b.withJournal(c.Context, func(s journal.Store) error {
 		open, err := s.OpenLast(c.Context, 0)
@@ -112,7 +112,7 @@ func (r *round) typed(name, reading, temp string) (journal.Reading, error) {
 // log writes one reading and shows the notes on it; the cautions of a round stand
 // at its start.
 func (r *round) log(name string, reading journal.Reading) (logged, error) {
-	done, err := r.logTyped(r.ctx, r.store, name, reading, nil)
+	done, err := r.logTyped(r.ctx, r.store, name, reading, nil, false)
 	if err != nil {
 		return done, err
 	}
@@ -129,7 +129,7 @@ func (r *round) log(name string, reading journal.Reading) (logged, error) {
 func (r *round) pipe() error {
 	return r.eachLine(func(fields []string) error {
 		if len(fields) != 3 {
-			return dataError("", "read %d values, wanted VESSEL READING TEMP", len(fields))
+			return dataError("", "read %s, wanted VESSEL READING TEMP", count(len(fields), "value", "values"))
 		}
 		reading, err := r.typed(fields[0], fields[1], fields[2])
 		if err != nil {

@@ -11,6 +11,7 @@ import (
 	"github.com/urfave/cli/v2"
 	"golang.org/x/term"
 
+	"gylebook/attenuation/journal"
 	"gylebook/gravity/method"
 )
 
@@ -23,6 +24,10 @@ type bench struct {
 	notes    []method.Note // on how values were read
 	lines    bool          // values came line by line, from stdin
 	help     []func()      // each writes one command's help; only when asked for
+
+	take func(sheet)   // takes what would be printed; nil prints
+	held journal.Store // is open already and used in the place of the one named; nil opens that
+	wide int           // for text, in the place of the terminal's width; 0 asks that
 }
 
 // run is the whole program. It returns the exit code.
@@ -103,6 +108,9 @@ func (b *bench) offered() []struct {
 		{"terminal", "journal", b.terminalCommand},
 		{"season", "journal", b.seasonCommand},
 		{"why", "journal", b.whyCommand},
+		{"report", "pages", b.reportCommand},
+		{"card", "pages", b.cardCommand},
+		{"serve", "pages", b.serveCommand},
 		{"completion", "journal", b.completionCommand},
 		{completeOpen, "journal", b.completeOpenCommand},
 	}
@@ -159,6 +167,9 @@ func (b *bench) command(cmd *cli.Command, examples string, action func(*cli.Cont
 		if b.set, err = readSettings(c, b.out); err != nil {
 			return err
 		}
+		if b.wide > 0 {
+			b.set.width = b.wide
+		}
 		return action(c)
 	}
 	return cmd
@@ -195,7 +206,7 @@ func (b *bench) interactive() bool {
 
 // tooMany says that more values were given than the command takes.
 func tooMany(c *cli.Context, want int) error {
-	return usageError("", "read %d values, wanted %d; usage: gylebook %s %s", c.Args().Len(), want, c.Command.Name, c.Command.ArgsUsage)
+	return usageError("", "read %s, wanted %d; usage: gylebook %s %s", count(c.Args().Len(), "value", "values"), want, c.Command.Name, c.Command.ArgsUsage)
 }
 
 // missing is the one-line usage hint for values that are not there.

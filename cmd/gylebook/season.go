@@ -2,6 +2,7 @@ package main
 
 import (
 	"cmp"
+	"context"
 	"fmt"
 	"slices"
 	"strconv"
@@ -34,43 +35,60 @@ func (b *bench) seasonCommand() *cli.Command {
 }
 
 func (b *bench) season(c *cli.Context) error {
-	f := journal.Filter{Product: c.String("product"), Yeast: c.String("yeast")}
+	f, tests, err := seasonAsked(c)
+	if err != nil {
+		return err
+	}
+	defer b.hasty()()
+	return b.withJournal(c.Context, func(s journal.Store) error {
+		rows, err := b.seasonRows(c.Context, s, f)
+		if err != nil {
+			return err
+		}
+		return b.print(b.seasonSheet(f, rows, tests))
+	})
+}
+
+// seasonAsked reads the year and the flags that narrow a season.
+func seasonAsked(c *cli.Context) (journal.Filter, control.Set, error) {
+	f, tests := journal.Filter{Product: c.String("product"), Yeast: c.String("yeast")}, control.Default
 	if c.Args().Len() > 1 {
-		return usageError("", "read %d values, wanted a year at most; usage: gylebook season [YEAR]", c.Args().Len())
+		return f, tests, wanted(c, "a year at most")
 	}
 	if text := c.Args().First(); text != "" {
 		year, err := strconv.Atoi(text)
 		if err != nil || year < 1900 || year > 9999 {
-			return dataError("type a year such as 2026", "read %.20q, wanted a year from 1900 to 9999", text)
+			return f, tests, dataError("type a year such as 2026", "read %.20q, wanted a year from 1900 to 9999", text)
 		}
 		f.Year = year
 	}
-	tests := control.Default
 	if c.IsSet("tests") {
 		var err error
 		if tests, err = control.ParseSet(c.String("tests")); err != nil {
-			return usageError("gylebook season --tests "+control.Default.String(), "--tests: %v", err)
+			return f, tests, usageError("gylebook season --tests "+control.Default.String(), "--tests: %v", err)
 		}
 	}
-	return b.withJournal(c.Context, func(s journal.Store) error {
-		book, err := bookOf(c.Context, s)
+	return f, tests, nil
+}
+
+// seasonRows reads the batches of a season, with a count on a terminal.
+func (b *bench) seasonRows(ctx context.Context, s journal.Store, f journal.Filter) ([]season.Row, error) {
+	book, err := bookOf(ctx, s)
+	if err != nil {
+		return nil, err
+	}
+	book.Plain = true // no uncertainty is shown
+	var rows []season.Row
+	count := b.counter("batches")
+	defer count.end()
+	for row, err := range season.Rows(ctx, s, f, book) {
 		if err != nil {
-			return err
+			return nil, err
 		}
-		book.Plain = true // no uncertainty is shown
-		var rows []season.Row
-		count := b.counter("batches")
-		for row, err := range season.Rows(c.Context, s, f, book) {
-			if err != nil {
-				count.end()
-				return err
-			}
-			rows = append(rows, row)
-			count.to(len(rows))
-		}
-		count.end()
-		return b.print(b.seasonSheet(f, rows, tests))
-	})
+		rows = append(rows, row)
+		count.to(len(rows))
+	}
+	return rows, nil
 }
 
 func (b *bench) seasonSheet(f journal.Filter, rows []season.Row, tests control.Set) sheet {
@@ -94,7 +112,7 @@ func (b *bench) seasonSheet(f journal.Filter, rows []season.Row, tests control.S
 	if f.Year != 0 {
 		title = fmt.Sprintf("season %d", f.Year)
 	}
-	title += fmt.Sprintf(": %d batches, %d open", len(rows), open)
+	title += fmt.Sprintf(": %s, %d open", count(len(rows), "batch", "batches"), open)
 	if len(rows) == 0 {
 		s.ladder = &tables.Ladder{Answer: []string{title}}
 		return s

@@ -30,12 +30,13 @@ func (b *bench) todayCommand() *cli.Command {
 
 func (b *bench) today(c *cli.Context) error {
 	if c.Args().Len() > 0 {
-		return usageError("", "read %d values, wanted none; usage: gylebook today [--at TIME]", c.Args().Len())
+		return usageError("", "read %s, wanted none; usage: gylebook today [--at TIME]", count(c.Args().Len(), "value", "values"))
 	}
 	at, err := b.at(c, "at")
 	if err != nil {
 		return err
 	}
+	defer b.hasty()()
 	return b.withJournal(c.Context, func(s journal.Store) error {
 		list, err := standings(c.Context, s, at, c.IsSet("at"))
 		if err != nil {
@@ -67,14 +68,9 @@ func standings(ctx context.Context, r journal.Reader, at time.Time, past bool) (
 			return nil, err
 		}
 	}
-	plain := *f.book
-	plain.Plain = true // no uncertainty is shown
+	plain := plainly(f.book)
 	list := make([]standing, len(open))
-	one := func(i int) {
-		list[i] = standingOf(journal.DeriveLast(open[i], &plain, 3), at)
-		e, err := outlook.EvidenceOf(f.view(open[i]), histories[i], at, false)
-		list[i].foresee(e, err)
-	}
+	one := func(i int) { list[i] = f.standing(open[i], plain, histories[i], at) }
 	var apart []int
 	for i, rec := range open {
 		if blended(rec) {
@@ -86,6 +82,21 @@ func standings(ctx context.Context, r journal.Reader, at time.Time, past bool) (
 	outlook.Each(len(apart), func(k int) { one(apart[k]) })
 	slices.SortStableFunc(list, byAttention)
 	return list, ctx.Err()
+}
+
+// plainly is a book without uncertainties, for what shows none.
+func plainly(book *journal.Book) *journal.Book {
+	plain := *book
+	plain.Plain = true
+	return &plain
+}
+
+// standing is one of standings.
+func (f *foresight) standing(rec *journal.Record, plain *journal.Book, h outlook.History, at time.Time) standing {
+	s := standingOf(journal.DeriveLast(rec, plain, 3), at)
+	e, err := outlook.EvidenceOf(f.view(rec), h, at, false)
+	s.foresee(e, err)
+	return s
 }
 
 func blended(rec *journal.Record) bool {

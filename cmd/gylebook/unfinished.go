@@ -3,6 +3,7 @@ package main
 import (
 	"os"
 	"sync"
+	"sync/atomic"
 )
 
 // unfinished are the files that are being written beside their names. An interrupt
@@ -36,4 +37,13 @@ func (h *halves) remove() {
 	for name := range h.names {
 		_ = os.Remove(name)
 	}
+}
+
+// gentle is set while an interrupt is left to the command, which ends by itself.
+var gentle atomic.Bool
+
+// gently leaves interrupts to the caller until the function returned is called.
+func gently() (end func()) {
+	gentle.Store(true)
+	return func() { gentle.Store(false) }
 }

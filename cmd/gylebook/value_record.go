@@ -38,8 +38,12 @@ func valueRecord(v journal.View, one *journal.Value, notes []method.Note) tables
 	if h, ok := v.Elapsed(src.TakenAt); ok {
 		elapsed = h
 	}
+	var entry any
+	if one.Number != unwritten {
+		entry = int(one.Number)
+	}
 	r := tables.Record{
-		{Name: "entry", Value: int(one.Number)},
+		{Name: "entry", Value: entry},
 		{Name: "batch_id", Value: v.Record.Batch.ID},
 		{Name: "vessel", Value: nilIfEmpty(src.Vessel)},
 		{Name: "taken_at", Value: stampText(src.TakenAt)},

@@ -8,6 +8,7 @@ import (
 	"io"
 	"net/http"
 	"strings"
+	"sync"
 
 	pagekit "gylebook/tables/page"
 )
@@ -46,8 +47,11 @@ var functions = template.FuncMap{
 	"filled": pagekit.Texts,
 }
 
-// templates are the pages by name, each with the layout around it.
-var templates = parseTemplates("board", "batch", "readback", "undo", "bench", "login", "error")
+// templates are the pages by name, each with the layout around it, parsed when a
+// server is made: most runs of the program are none.
+var templates = sync.OnceValue(func() map[string]*template.Template {
+	return parseTemplates("board", "batch", "readback", "undo", "bench", "login", "error")
+})
 
 func parseTemplates(names ...string) map[string]*template.Template {
 	out := map[string]*template.Template{}
@@ -60,7 +64,7 @@ func parseTemplates(names ...string) map[string]*template.Template {
 
 // render writes a page.
 func render(w io.Writer, name string, p page) error {
-	return templates[name].ExecuteTemplate(w, "layout", p)
+	return templates()[name].ExecuteTemplate(w, "layout", p)
 }
 
 // asset is a file that pages refer to.

@@ -164,7 +164,7 @@ func (s *Server) showReadback(v *visit) error {
 		return err
 	}
 	var b bytes.Buffer
-	if err := templates["batch"].ExecuteTemplate(&b, "fragment", f); err != nil {
+	if err := templates()["batch"].ExecuteTemplate(&b, "fragment", f); err != nil {
 		return err
 	}
 	v.send(status, "text/html; charset=utf-8", b.Bytes())

@@ -32,7 +32,7 @@ type Limits struct {
 
 // DefaultLimits are those for a cellar.
 var DefaultLimits = Limits{
-	Body: 64 << 10, Sessions: 200, Idle: 12 * time.Hour, Life: 72 * time.Hour,
+	Body: 64 << 10, Sessions: 500, Idle: 12 * time.Hour, Life: 72 * time.Hour,
 	Tickets: 32, Ticket: 30 * time.Minute,
 	Header: 5 * time.Second, Read: 15 * time.Second, Write: time.Minute, Keep: time.Minute,
 	Act: 30 * time.Second, Stop: 10 * time.Second,
