@@ -140,13 +140,10 @@ func (e *Evidence) flatten(readings []Reading) []Reading {
 
 // mayBeLeft is the 95th percentile of the points still to fall.
 func (f Forecast) mayBeLeft() (points float64, ok bool) {
-	if !f.Curve || len(f.thetas) == 0 {
+	if !f.Curve || len(f.drawn) == 0 {
 		return 0, false
 	}
-	left := make([]float64, len(f.thetas))
-	for k, x := range f.thetas {
-		left[k] = paramsOf(x).At(f.og, f.last) - paramsOf(x).FG(f.og)
-	}
+	left := figures(f.drawn, func(d *drawn) float64 { return d.at(f.last) - d.fg() })
 	return interval(left).Hi, true
 }
 

@@ -35,7 +35,7 @@ type Forecast struct {
 
 	fg       []float64 // draws of the final reading, sorted
 	hours    []float64
-	thetas   [][]float64
+	drawn    []*drawn
 	og       float64
 	last     float64 // hours of the last reading
 	tau, u   float64
@@ -59,7 +59,10 @@ const (
 // Forecast foretells the end from the readings up to now, in hours since
 // pitching. Below three readings it gives what the finished batches reached
 // and says so. It returns ErrNoOG or a *method.RangeError.
-func (p Prior) Forecast(b Batch, now float64) (Forecast, error) {
+func (p Prior) Forecast(b Batch, now float64) (Forecast, error) { return p.forecast(b, now, true) }
+
+// forecast leaves out when the end comes unless that is wanted.
+func (p Prior) forecast(b Batch, now float64, hours bool) (Forecast, error) {
 	if err := b.check(); err != nil {
 		return Forecast{}, err
 	}
@@ -90,12 +93,16 @@ func (p Prior) Forecast(b Batch, now float64) (Forecast, error) {
 		post = newPosterior(p, b, readings, wide, usualNu)
 		top, curvature = post.best()
 	}
-	f.thetas, f.ESS = post.draws(top, curvature, src)
+	f.drawn, f.ESS = post.draws(top, curvature, src)
 	if f.ESS < enoughESS*proposals/3 {
 		f.note(method.NotCovered, "only %.0f effective draws: the interval is rough", f.ESS)
 	}
 	f.late = p.late
-	f.finish(readings, rand.New(src))
+	rng := rand.New(src)
+	f.ends(readings, rng)
+	if hours {
+		f.times(readings, rng)
+	}
 	return f, nil
 }
 
@@ -121,42 +128,41 @@ func (f *Forecast) fromHistory(p Prior, b Batch, src *rand.PCG) {
 	wide, ok := p.wide(math.Hypot(b.uncertainOG(), 0.5*p.Tau), src)
 	for k := 0; ok && k < kept; {
 		if x := wide.Rand(nil); inside(x) && b.OG+x[dims] > 0.1 {
-			f.thetas = append(f.thetas, x)
+			f.drawn = append(f.drawn, newDrawn(x, b.OG))
 			k++
 		}
 	}
-	f.fg = make([]float64, len(f.thetas))
-	for k, x := range f.thetas {
-		f.fg[k] = paramsOf(x).FG(b.OG)
-	}
+	f.fg = figures(f.drawn, (*drawn).fg)
 	f.FG = interval(f.fg)
 }
 
-// finish makes the figures from the draws.
-func (f *Forecast) finish(readings []Reading, rng *rand.Rand) {
+// ends makes the final gravity from the draws.
+func (f *Forecast) ends(readings []Reading, rng *rand.Rand) {
 	last := readings[len(readings)-1]
 	f.last = last.Hours
-	f.fg = make([]float64, len(f.thetas))
-	here := make([]float64, len(f.thetas))
-	for k, x := range f.thetas {
-		f.fg[k] = paramsOf(x).FG(f.og)
-		here[k] = paramsOf(x).At(f.og, f.last)
-	}
+	f.fg = figures(f.drawn, (*drawn).fg)
+	here := figures(f.drawn, func(d *drawn) float64 { return d.at(f.last) })
 	centre := median(f.fg)
 	f.progress = clamp((f.og-median(here))/math.Max(f.og-centre, 1e-6), 0, 1)
 	extra := math.Hypot(shareU*f.u, extraFG)
 	for k := range f.fg {
 		f.fg[k] = centre + widenFG*(f.fg[k]-centre) + extra*rng.NormFloat64()
 	}
+	f.FG = interval(f.fg)
+}
+
+// times makes the hour of the end from the draws, after ends.
+func (f *Forecast) times(readings []Reading, rng *rand.Rand) {
 	gap := (readings[len(readings)-1].Hours - readings[0].Hours) / float64(len(readings)-1)
 	spread := logTime + lateTime*math.Max(0, f.progress-lateFrom)
-	f.hours = make([]float64, len(f.thetas))
-	for k, x := range f.thetas {
-		togo := math.Max(paramsOf(x).TimeTo(f.og, nearEnd)*math.Exp(f.late)-f.last, 0)
+	f.hours = figures(f.drawn, func(d *drawn) float64 { return d.timeTo(nearEnd) })
+	late := math.Exp(f.late)
+	for k, end := range f.hours {
+		togo := math.Max(end*late-f.last, 0)
 		t := f.last + togo*math.Exp(spread*rng.NormFloat64()) + gapShare*gap*rng.NormFloat64()
 		f.hours[k] = math.Min(math.Max(t, f.last), maxHours)
 	}
-	f.FG, f.Hours = interval(f.fg), interval(f.hours)
+	f.Hours = interval(f.hours)
 }
 
 func (f *Forecast) note(code, format string, args ...any) {

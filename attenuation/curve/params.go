@@ -42,7 +42,10 @@ func (h shape) left(hours float64) float64 {
 	if !(hours > 0) {
 		return 1
 	}
-	return math.Exp(h.s * (h.top - softplus(h.lnE+h.k*hours)))
+	x := h.lnE + h.k*hours
+	// As softplus, but math.Log is the quicker: it loses the digits of a small number,
+	// which are far behind those of the exponent it is part of.
+	return math.Exp(h.s * (h.top - math.Max(x, 0) - math.Log(1+math.Exp(-math.Abs(x)))))
 }
 
 // rate is the share of the fall that goes in an hour.

@@ -45,10 +45,16 @@ func (p *posterior) height(x []float64) float64 {
 	theta := paramsOf(x)
 	h := theta.curveShape()
 	o := theta.original(p.og)
+	fall := theta.AA * o
+	likely, product := 0.0, 1.0
 	for k, r := range p.readings {
-		e := (r.Points - o + theta.AA*o*(1-h.left(r.Hours))) / p.scale[k]
-		f -= 0.5 * (p.nu + 1) * math.Log1p(e*e/p.nu)
+		e := (r.Points - o + fall*(1-h.left(r.Hours))) / p.scale[k]
+		// One logarithm of a product costs less than one of every factor.
+		if product *= 1 + e*e/p.nu; product > 1e100 {
+			likely, product = likely+math.Log(product), 1
+		}
 	}
+	f -= 0.5 * (p.nu + 1) * (likely + math.Log(product))
 	if math.IsNaN(f) {
 		return math.Inf(-1)
 	}
@@ -62,35 +68,46 @@ var differences = [dims + 1]float64{1e-4, 1e-4, 1e-3, 1e-3, 1e-2}
 // prior likewise (iteratively reweighted least squares).
 func (p *posterior) slope(x []float64, g *mat.VecDense, a *mat.SymDense) {
 	const n = dims + 1
-	g.Zero()
-	a.Zero()
-	moved := make([]Params, n+1)
-	shapes := make([]shape, n+1)
+	var moved [n + 1]Params
+	var shapes [n + 1]shape
+	var original, fall [n + 1]float64
+	var y [n]float64
 	for k := range n + 1 {
-		y := append([]float64(nil), x...)
+		copy(y[:], x)
 		if k < n {
 			y[k] += differences[k]
 		}
-		moved[k] = paramsOf(y)
+		moved[k] = paramsOf(y[:])
 		shapes[k] = moved[k].curveShape()
+		original[k] = moved[k].original(p.og)
+		fall[k] = moved[k].AA * original[k]
 	}
 	var j [n]float64
+	var gradient [n]float64
+	var curved [n][n]float64
 	for i, r := range p.readings {
-		at := func(k int) float64 {
-			o := moved[k].original(p.og)
-			return o - moved[k].AA*o*(1-shapes[k].left(r.Hours))
-		}
-		here := at(n)
+		left := shapes[n].left(r.Hours)
+		here := original[n] - fall[n]*(1-left)
 		e := (r.Points - here) / p.scale[i]
 		w := (p.nu + 1) / (p.nu + e*e)
 		for k := range n {
-			j[k] = (at(k) - here) / (differences[k] * p.scale[i])
+			at := left // neither the attenuation nor the original gravity moves the shape
+			if k != 0 && k != dims {
+				at = shapes[k].left(r.Hours)
+			}
+			j[k] = (original[k] - fall[k]*(1-at) - here) / (differences[k] * p.scale[i])
 		}
 		for k := range n {
-			g.SetVec(k, g.AtVec(k)+w*e*j[k])
+			gradient[k] += w * e * j[k]
 			for l := range k + 1 {
-				a.SetSym(k, l, a.At(k, l)+w*j[k]*j[l])
+				curved[k][l] += w * j[k] * j[l]
 			}
+		}
+	}
+	for k := range n {
+		g.SetVec(k, gradient[k])
+		for l := range k + 1 {
+			a.SetSym(k, l, curved[k][l])
 		}
 	}
 	w := (p.prior.free + dims) / (p.prior.free + p.prior.quadratic(x))

@@ -12,15 +12,15 @@ import (
 // since pitching, should show. Without a curve it is what the finished batches
 // would show, which is wide.
 func (f Forecast) GravityAt(hours float64) Interval {
-	if math.IsNaN(hours) || len(f.thetas) == 0 {
+	if math.IsNaN(hours) || len(f.drawn) == 0 {
 		return Interval{}
 	}
 	hours = clamp(hours, 0, maxHours)
 	rng := rand.New(rand.NewPCG(seed1, seed2+1))
 	noise := math.Hypot(f.u, f.tau)
-	draws := make([]float64, len(f.thetas))
-	for k, x := range f.thetas {
-		draws[k] = paramsOf(x).At(f.og, hours) + noise*rng.NormFloat64()
+	draws := figures(f.drawn, func(d *drawn) float64 { return d.at(hours) })
+	for k := range draws {
+		draws[k] += noise * rng.NormFloat64()
 	}
 	return interval(draws)
 }
@@ -42,16 +42,16 @@ func (f Forecast) Of(figure func(fgPoints float64) float64) (i Interval, ok bool
 // at the last reading, in the time in which such batches end; ok is false
 // without a curve.
 func (f Forecast) Left(points float64) (p float64, ok bool) {
-	if !f.Curve || len(f.thetas) == 0 || math.IsNaN(points) {
+	if !f.Curve || len(f.drawn) == 0 || math.IsNaN(points) {
 		return 0, false
 	}
-	more := 0
-	for _, x := range f.thetas {
-		if paramsOf(x).TimeTo(f.og, points)*math.Exp(f.late) > f.last {
+	more, late := 0, math.Exp(f.late)
+	for _, t := range figures(f.drawn, func(d *drawn) float64 { return d.timeTo(points) }) {
+		if t*late > f.last {
 			more++
 		}
 	}
-	return float64(more) / float64(len(f.thetas)), true
+	return float64(more) / float64(len(f.drawn)), true
 }
 
 // LaterThan gives the probability that the end comes later than a time in
@@ -70,11 +70,7 @@ func (f Forecast) Rate() Interval {
 	if !f.Curve {
 		return Interval{}
 	}
-	draws := make([]float64, len(f.thetas))
-	for k, x := range f.thetas {
-		draws[k] = paramsOf(x).Rate(f.og, f.last)
-	}
-	return interval(draws)
+	return interval(figures(f.drawn, func(d *drawn) float64 { return d.rate(f.last) }))
 }
 
 // Score gives the continuous ranked probability score of the final gravity

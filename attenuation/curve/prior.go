@@ -5,7 +5,6 @@ import (
 	"math/rand/v2"
 
 	"gonum.org/v1/gonum/mat"
-	"gonum.org/v1/gonum/stat/distmv"
 )
 
 // dims is the number of parameters that batches share; the offset of the
@@ -132,7 +131,7 @@ func (p Prior) logDensity(x []float64) float64 {
 
 // wide gives the proposal that has the shape of the prior, with the spread of
 // the original gravity as its fifth dimension.
-func (p Prior) wide(sdOG float64, src rand.Source) (*distmv.StudentsT, bool) {
+func (p Prior) wide(sdOG float64, src rand.Source) (*student, bool) {
 	scale := mat.NewSymDense(dims+1, nil)
 	for i := range dims {
 		for j := range i + 1 {
@@ -141,7 +140,7 @@ func (p Prior) wide(sdOG float64, src rand.Source) (*distmv.StudentsT, bool) {
 	}
 	scale.SetSym(dims, dims, math.Max(sdOG*sdOG, 1e-12))
 	centre := append(append([]float64(nil), p.centre[:]...), 0)
-	return distmv.NewStudentsT(centre, scale, p.free, src)
+	return newStudent(centre, scale, p.free, src)
 }
 
 // Centre gives the parameters at the middle of the prior.

@@ -6,7 +6,6 @@ import (
 
 	"gonum.org/v1/gonum/mat"
 	"gonum.org/v1/gonum/stat"
-	"gonum.org/v1/gonum/stat/distmv"
 )
 
 // Sizes of the importance sampling.
@@ -30,25 +29,25 @@ func source() *rand.PCG { return rand.NewPCG(seed1, seed2) }
 // size of the sample they come from (Kong 1992). The proposal is a Student t
 // about the top with the curvature there (Laplace), and a part shaped like the
 // prior, which guards against a top that is narrower than what lies around it.
-func (p *posterior) draws(top []float64, curvature *mat.SymDense, src *rand.PCG) ([][]float64, float64) {
+func (p *posterior) draws(top []float64, curvature *mat.SymDense, src *rand.PCG) ([]*drawn, float64) {
 	centre, scale := top, inverse(curvature)
 	scale.ScaleSym(firstWiden, scale)
 	wide, ok := p.prior.wide(p.sdOG, src)
 	if !ok {
-		return [][]float64{top}, 1
+		return []*drawn{newDrawn(top, p.og)}, 1
 	}
 	var xs [][]float64
 	var weights []float64
 	ess := 0.0
 	for range maxRounds {
-		near, ok := distmv.NewStudentsT(centre, scale, mainFree, src)
+		near, ok := newStudent(centre, scale, mainFree, src)
 		if !ok { // the curvature was no use, the prior alone proposes
 			near = wide
 		}
 		xs, weights = p.round(near, wide)
 		ess = effective(weights)
 		if !(ess > 0) { // no proposal describes a fermentation
-			return [][]float64{top}, 1
+			return []*drawn{newDrawn(top, p.og)}, 1
 		}
 		if ess > enoughESS*proposals {
 			break
@@ -56,27 +55,28 @@ func (p *posterior) draws(top []float64, curvature *mat.SymDense, src *rand.PCG)
 		centre, scale = moments(xs, weights)
 		scale.ScaleSym(secondWiden, scale)
 	}
-	return resampled(xs, weights, rand.New(src).Float64()), ess
+	return resampled(xs, weights, p.og, rand.New(src).Float64()), ess
 }
 
 // round draws the proposals and weighs each by what it should have been drawn
 // with.
-func (p *posterior) round(near, wide *distmv.StudentsT) ([][]float64, []float64) {
+func (p *posterior) round(near, wide *student) ([][]float64, []float64) {
 	xs := make([][]float64, proposals)
 	logs := make([]float64, proposals)
+	space := make([]float64, proposals*(dims+1))
 	most := math.Inf(-1)
 	for i := range xs {
 		from := near
 		if float64(i) >= mainShare*proposals {
 			from = wide
 		}
-		x := from.Rand(nil)
+		x := from.Rand(space[i*(dims+1) : (i+1)*(dims+1)])
 		xs[i], logs[i] = x, p.height(x)
 		if math.IsInf(logs[i], -1) {
 			continue
 		}
-		a := math.Log(mainShare) + near.LogProb(x)
-		b := math.Log(1-mainShare) + wide.LogProb(x)
+		a := math.Log(mainShare) + near.logProb(x)
+		b := math.Log(1-mainShare) + wide.logProb(x)
 		logs[i] -= math.Max(a, b) + math.Log1p(math.Exp(-math.Abs(a-b)))
 		most = math.Max(most, logs[i])
 	}
@@ -122,16 +122,21 @@ func moments(xs [][]float64, weights []float64) ([]float64, *mat.SymDense) {
 
 // resampled takes points at equal steps of the cumulated weight (systematic
 // resampling), from one uniform number.
-func resampled(xs [][]float64, weights []float64, u float64) [][]float64 {
-	out := make([][]float64, 0, kept)
+func resampled(xs [][]float64, weights []float64, og, u float64) []*drawn {
+	out := make([]*drawn, 0, kept)
 	i, sum := 0, weights[0]
+	var now *drawn
+	from := -1
 	for k := range kept {
 		at := (u + float64(k)) / kept
 		for sum < at && i < len(xs)-1 {
 			i++
 			sum += weights[i]
 		}
-		out = append(out, xs[i])
+		if from != i {
+			now, from = newDrawn(xs[i], og), i
+		}
+		out = append(out, now)
 	}
 	return out
 }

@@ -30,7 +30,7 @@ func (e *Evidence) decide(p Prior, b Batch, flat []Reading, w Watch) {
 	ended := e.LeftKnown && e.Left < leftLimit
 	open := e.limitOpen(w)
 	switch {
-	case e.Unchanged && (e.stuck(p, b, flat) || e.AboveLimitKnown && e.AboveLimit > nearEnd):
+	case e.Unchanged && (e.AboveLimitKnown && e.AboveLimit > nearEnd || e.stuck(p, b, flat)):
 		e.State = Stalled
 	case e.Unchanged && ended && !open:
 		e.State = Terminal
@@ -55,7 +55,7 @@ func (e *Evidence) limitOpen(w Watch) bool { return w.Slow && !e.AboveLimitKnown
 // stuck reports whether the unchanged readings stand above the interval that
 // was foretold before they stood still: they may not explain themselves away.
 func (e *Evidence) stuck(p Prior, b Batch, flat []Reading) bool {
-	before, err := p.Forecast(b, math.Nextafter(flat[0].Hours, math.Inf(-1)))
+	before, err := p.forecast(b, math.Nextafter(flat[0].Hours, math.Inf(-1)), false)
 	if err != nil {
 		return false
 	}

@@ -78,6 +78,6 @@ func (o OG) corrected(book *Book) (gravity.SG, gravity.Plato, []method.Note, err
 	if err != nil {
 		return 0, 0, nil, err
 	}
-	res, more, err := CorrectTyped(h, typed, temp, 0)
+	res, more, err := correctTyped(h, typed, temp, 0, book.Plain)
 	return res.SG, res.Extract, slices.Concat(notes, more), err
 }

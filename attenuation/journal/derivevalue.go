@@ -15,6 +15,9 @@ import (
 func (v *View) values(book *Book, readings []Numbered[Reading], s span) {
 	// Readings of one minute follow each other: only the last minute is compared.
 	minutes, last := 0, time.Time{}
+	if !s.limited {
+		v.Values = make([]Value, 0, len(readings))
+	}
 	for k := len(readings) - 1; k >= 0; k-- {
 		r := &readings[k]
 		if !s.until.IsZero() && r.Body.TakenAt.After(s.until) {

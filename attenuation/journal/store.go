@@ -84,6 +84,10 @@ type Filter struct {
 	Closed  bool
 	Batch   string // this one alone
 	Void    bool   // void ones too, marked
+	// Lean leaves out what no figure is made of, where that is quicker: who entered
+	// what hangs on the batch and when, and of its readings the vessel, how sure the
+	// time is and the note.
+	Lean bool
 }
 
 // Reader is a consistent view of the journal.
@@ -99,6 +103,9 @@ type Reader interface {
 	// pitching was not entered has all of them: the first tells when it began. With n
 	// of 0 or less no batch has any.
 	OpenLast(ctx context.Context, n int) ([]*Record, error)
+	// OpenPlaces returns every open batch with its events alone, without who entered
+	// them and when: what tells where each is. The order is that of Open.
+	OpenPlaces(ctx context.Context) ([]*Record, error)
 	// Batches runs over the batches that pass f, by product, then pitch, then id,
 	// holding one at a time.
 	Batches(ctx context.Context, f Filter) iter.Seq2[*Record, error]
@@ -142,6 +149,13 @@ type Store interface {
 	// (ErrNotFound), is not void (ErrVoided) and is no void itself (ErrNotFound).
 	// Other errors: ErrReadOnly, ErrDiskFull, ErrBusy, ErrNotWritten.
 	Append(ctx context.Context, by string, now time.Time, draft func(Reader) ([]Body, error)) ([]Entry, error)
+	// AppendEach is Append for more bodies than memory holds: draft returns what gives
+	// them one by one, and the numbers of the first and the last entry are returned
+	// instead of the entries, 0 and 0 when there were none. The bodies are run over
+	// once, in the same transaction. An error among them is returned as it is, and
+	// nothing is written. The view may be asked until they end, and has those in it
+	// that were taken before.
+	AppendEach(ctx context.Context, by string, now time.Time, draft func(Reader) (iter.Seq2[Body, error], error)) (first, last int64, err error)
 	// Restore fills an empty journal with entries as they are, numbers, times and
 	// digests included, all or none, and verifies each. ErrNotEmpty, ErrTampered,
 	// and the errors of Append.

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"regexp"
 	"strings"
+	"sync"
 	"time"
 )
 
@@ -25,9 +26,12 @@ var (
 	clockLayouts = []string{"15:04", "15:04:05"}
 )
 
+// Made when they are first asked: most commands read no time.
 var (
-	offsetAtEnd = regexp.MustCompile(`\s*([+-]\d{2}:\d{2}|Z)$`)
-	onlyDay     = regexp.MustCompile(`^(\d{4}-\d{2}-\d{2}|\d{1,2}\.\d{1,2}\.\d{4}|today|yesterday)$`)
+	offsetAtEnd = sync.OnceValue(func() *regexp.Regexp { return regexp.MustCompile(`\s*([+-]\d{2}:\d{2}|Z)$`) })
+	onlyDay     = sync.OnceValue(func() *regexp.Regexp {
+		return regexp.MustCompile(`^(\d{4}-\d{2}-\d{2}|\d{1,2}\.\d{1,2}\.\d{4}|today|yesterday)$`)
+	})
 )
 
 // ParseTime reads a time: RFC 3339, "2026-10-24 12:00", "24.10.2026 12:00" (the day
@@ -47,13 +51,13 @@ func ParseTime(text string, loc *time.Location, now time.Time) (time.Time, error
 		return now.In(loc), nil
 	}
 	body, offset := in, ""
-	if m := offsetAtEnd.FindStringSubmatch(in); m != nil && strings.Contains(in, ":") {
+	if m := offsetAtEnd().FindStringSubmatch(in); m != nil && strings.Contains(in, ":") {
 		body, offset = strings.TrimSuffix(in, m[0]), m[1]
 	}
 	wall, ok := wallClock(body, now.In(loc))
 	if !ok {
 		wanted, advice := "a date and a time", timeAdvice
-		if onlyDay.MatchString(in) {
+		if onlyDay().MatchString(in) {
 			wanted, advice = "the time of day too", "type "+in+" 12:00"
 		}
 		return time.Time{}, &TimeError{in, wanted, advice}

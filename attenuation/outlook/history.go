@@ -2,16 +2,13 @@ package outlook
 
 import (
 	"context"
-	"fmt"
 	"iter"
 	"runtime"
-	"slices"
 	"sync"
 	"time"
 
 	"gylebook/attenuation/curve"
 	"gylebook/attenuation/journal"
-	"gylebook/attenuation/season"
 )
 
 // Most is how many finished batches a history has. The newest are taken, so that a
@@ -52,22 +49,16 @@ const dryStart = 0.91
 // book.OE are used by the caller's goroutine alone. The error is that of the reader.
 func HistoryOf(ctx context.Context, r Finisher, book *journal.Book, product, yeast string, before time.Time, drink Drink) (History, error) {
 	h := History{Product: product, Yeast: yeast, Kind: drink.Kind}
-	var ends []ended
-	seen := 0
+	var records []*journal.Record
 	for rec, err := range r.Finished(ctx, product, yeast, before) {
 		if err != nil {
 			return History{}, err
 		}
-		e, why := endOf(rec, book)
-		if why != "" {
-			h.Left = append(h.Left, Left{rec.Batch.ID, why})
-		} else {
-			ends = append(ends, e)
-		}
-		if seen++; seen == Most {
+		if records = append(records, rec); len(records) == Most {
 			break
 		}
 	}
+	ends := h.ends(records, book)
 	if !drink.Named {
 		h.Kind = kindOf(ends)
 	}
@@ -83,63 +74,6 @@ func (h History) Prior() curve.Prior {
 	}
 	return h.prior
 }
-
-// ended is a finished batch with its final gravity in points.
-type ended struct {
-	id     string
-	course curve.Batch
-	fg     float64
-}
-
-// How a batch shows that it was read to its end.
-const (
-	restHours = 20.0 // two readings so far apart …
-	restN     = 2    // … or more, within a point of the last one
-	endU      = 0.5  // standard uncertainty of that end, points
-)
-
-// endOf finds the end of a batch, or why it has none that could be learnt from.
-func endOf(rec *journal.Record, book *journal.Book) (e ended, why string) {
-	v := journal.Derive(rec, book)
-	at := forever
-	if rec.Closed != nil {
-		at = rec.Closed.Body.At
-	}
-	if !v.Primed.IsZero() && v.Primed.Before(at) {
-		at = v.Primed
-	}
-	c, err := CourseOf(v, at)
-	if err != nil {
-		if refused, ok := err.(*Refusal); ok {
-			return e, refused.Why
-		}
-		return e, err.Error()
-	}
-	var list []*journal.Value
-	for _, one := range v.Counting() {
-		if !one.Source.TakenAt.After(at) {
-			list = append(list, one)
-		}
-	}
-	from, _, ok := season.LastFall(list)
-	if !ok {
-		return e, "fewer than 2 readings"
-	}
-	var run []float64
-	for _, one := range list {
-		if !one.Source.TakenAt.Before(from) {
-			run = append(run, points(one.SG))
-		}
-	}
-	if rest := list[len(list)-1].Source.TakenAt.Sub(from).Hours(); len(run) < restN || rest < restHours {
-		return e, fmt.Sprintf("not read to its end: the last readings within a point cover %.0f h, wanted %.0f h", rest, restHours)
-	}
-	slices.Sort(run)
-	return ended{rec.Batch.ID, c.Batch, (run[len(run)/2] + run[(len(run)-1)/2]) / 2}, ""
-}
-
-// forever is after every entry.
-var forever = time.Date(9999, 12, 31, 0, 0, 0, 0, time.UTC)
 
 // kindOf is wine where most of the batches end dry, beer otherwise.
 func kindOf(ends []ended) curve.Kind {

@@ -15,6 +15,7 @@ import (
 // temperature adds is a parabola through three corrections of the same mark.
 type estimate struct {
 	from      *journal.Value
+	known     *texts
 	since     time.Time // calibration in force from then on
 	perScale  float64   // SG by one unit of the instrument's scale
 	slope     float64   // of the parabola at the known temperature, SG/°C
@@ -37,7 +38,7 @@ const (
 )
 
 // estimateFrom returns nil when every reading has to be corrected.
-func estimateFrom(last *journal.Value, book *journal.Book) *estimate {
+func estimateFrom(last *journal.Value, book *journal.Book, known *texts) *estimate {
 	if last == nil || last.Mean {
 		return nil
 	}
@@ -50,7 +51,7 @@ func estimateFrom(last *journal.Value, book *journal.Book) *estimate {
 		return nil
 	}
 	h.Scale = scale
-	e := &estimate{from: last, perScale: 1}
+	e := &estimate{from: last, known: known, perScale: 1}
 	if scale.IsMass() {
 		fit := gravity.Fits.Default().Fn
 		lo, errLo := fit.SG(last.Result.Extract - 0.1)
@@ -112,12 +113,8 @@ func (e *estimate) of(v journal.View, r *journal.Reading) (sg, doubt float64, ok
 	if oe, _, _ := v.OEAt(r.TakenAt); oe != e.from.OE {
 		return 0, 0, false
 	}
-	typed, err := r.Gravity.Reading()
+	typed, temp, err := e.known.read(r)
 	if err != nil || typed.Scale != e.from.Typed.Scale {
-		return 0, 0, false
-	}
-	temp, err := r.Temp.Temperature()
-	if err != nil {
 		return 0, 0, false
 	}
 	dt := float64(temp.C - e.from.Temp.C)
@@ -135,11 +132,7 @@ func (e *estimate) sharper(r *journal.Reading) (sg float64, ok bool) {
 	if e == nil || e.float.Scale != gravity.ScaleSG || e.float.Basis != gravity.Pair2020 {
 		return 0, false
 	}
-	typed, err := r.Gravity.Reading()
-	if err != nil {
-		return 0, false
-	}
-	temp, err := r.Temp.Temperature()
+	typed, temp, err := e.known.read(r)
 	if err != nil {
 		return 0, false
 	}

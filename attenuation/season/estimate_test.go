@@ -49,11 +49,11 @@ func TestDoubtOfAnEstimate(t *testing.T) {
 					if last == nil {
 						continue
 					}
-					e := estimateFrom(last, book)
+					e := estimateFrom(last, book, newTexts())
 					if e == nil {
 						t.Fatalf("%s at %v °C: no estimate", id, t0)
 					}
-					w := walk{view: v, book: book, last: last}
+					w := walk{view: v, book: book, last: last, known: newTexts()}
 					for _, dr := range []float64{-3, 0, 1, 2, 15, 40} {
 						for _, dt := range []float64{-6, -3, 0, 2, 6} {
 							r := reading(fg+dr, t0+dt)

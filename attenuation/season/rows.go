@@ -45,7 +45,9 @@ type Row struct {
 const noReading = "no reading that counts"
 
 // Of returns the row of one batch. A nil book knows no instruments.
-func Of(rec *journal.Record, book *journal.Book) Row {
+func Of(rec *journal.Record, book *journal.Book) Row { return rowOf(rec, book, newTexts()) }
+
+func rowOf(rec *journal.Record, book *journal.Book, known *texts) Row {
 	b := rec.Batch
 	row := Row{
 		Batch: b.ID, Product: b.Product, Yeast: b.Yeast, Generation: b.Generation, Parent: b.Parent,
@@ -69,7 +71,7 @@ func Of(rec *journal.Record, book *journal.Book) Row {
 		d := attenuation.LimitDifference(last.OE, last.Extract, *v.Limit)
 		row.LimitDifference = &d
 	}
-	w := newWalk(v, book)
+	w := newWalk(v, book, known)
 	row.Course = w.course()
 	if fall, ok := w.fell(); ok {
 		if days, ok := v.Days(fall); ok {

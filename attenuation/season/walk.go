@@ -25,15 +25,16 @@ type walk struct {
 	view     journal.View
 	book     *journal.Book
 	last     *journal.Value
+	known    *texts
 	estimate *estimate // nil when everything has to be corrected
 }
 
 // newWalk walks from the last reading of v, which has one.
-func newWalk(v journal.View, book *journal.Book) *walk {
+func newWalk(v journal.View, book *journal.Book, known *texts) *walk {
 	if book == nil {
 		book = journal.NewBook(nil)
 	}
-	return &walk{view: v, book: book, last: v.Last(), estimate: estimateFrom(v.Last(), book)}
+	return &walk{view: v, book: book, last: v.Last(), known: known, estimate: estimateFrom(v.Last(), book, known)}
 }
 
 // point is the gravity of one reading.
@@ -95,11 +96,7 @@ func (w *walk) point(r *journal.Reading) (p point, counts bool) {
 // correct corrects a point unless it is already; false means that it cannot be.
 func (w *walk) correct(p *point) bool {
 	r := p.reading
-	typed, err := r.Gravity.Reading()
-	if err != nil {
-		return false
-	}
-	temp, err := r.Temp.Temperature()
+	typed, temp, err := w.known.read(r)
 	if err != nil {
 		return false
 	}

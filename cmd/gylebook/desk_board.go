@@ -7,6 +7,7 @@ import (
 	"slices"
 	"strings"
 	"sync"
+	"sync/atomic"
 	"time"
 
 	"gylebook/gravity/method"
@@ -17,10 +18,21 @@ import (
 // vessels.
 type boardAsOf struct {
 	mu   sync.Mutex
+	last atomic.Pointer[shownBoard]
 	from asOf
 	list []standing
 	each map[string]int64
 }
+
+// shownBoard is a board that was fresh at a time.
+type shownBoard struct {
+	list []standing
+	at   time.Time
+}
+
+// boardRests is for how long a board is shown to others while somebody has a newer one
+// reckoned: they would wait for the forecasts of vessels that they do not look at.
+const boardRests = 2 * time.Second
 
 // Board implements web.Desk with what today says.
 func (d *desk) Board(ctx context.Context) (web.Board, error) {
@@ -44,12 +56,42 @@ func (d *desk) Board(ctx context.Context) (web.Board, error) {
 	return board, nil
 }
 
+// warm reckons what the first visitors ask for: the board, then the batches on it
+// with their pictures, the one that needs attention first. What fails here fails again
+// for the visitor, who is told.
+func (d *desk) warm(ctx context.Context) {
+	board, err := d.Board(ctx)
+	if err != nil {
+		return
+	}
+	for _, v := range board.Vessels[:min(mostBatches, len(board.Vessels))] {
+		for _, phone := range []bool{true, false} {
+			if _, err := d.Curve(ctx, v.Batch, "svg", phone); err != nil {
+				return
+			}
+		}
+	}
+}
+
 // standings are those of today. While only readings come, the vessels that they are
 // of are reckoned anew.
 func (d *desk) standings(ctx context.Context, now time.Time) ([]standing, error) {
 	b := &d.board
-	b.mu.Lock()
+	if !b.mu.TryLock() {
+		if last := b.last.Load(); last != nil && time.Since(last.at) < boardRests {
+			return last.list, nil
+		}
+		b.mu.Lock()
+	}
 	defer b.mu.Unlock()
+	list, err := d.freshStandings(ctx, b, now)
+	if err == nil {
+		b.last.Store(&shownBoard{list, time.Now()})
+	}
+	return list, err
+}
+
+func (d *desk) freshStandings(ctx context.Context, b *boardAsOf, now time.Time) ([]standing, error) {
 	journal, err := d.follow(ctx)
 	if err != nil {
 		return nil, err

@@ -26,11 +26,10 @@ type since struct {
 	each   map[string]int64 // and on one batch alone; never changed, made anew
 }
 
-// follow reads what has come since.
-func (s *since) follow(ctx context.Context, r journal.Reader) error {
-	number, chain, err := r.Head(ctx)
-	if err != nil || chain == s.chain {
-		return err
+// follow reads what has come since, up to the head given.
+func (s *since) follow(ctx context.Context, r journal.Reader, number int64, chain string) error {
+	if chain == s.chain || number < s.number { // another visitor was quicker
+		return nil
 	}
 	next := since{number: number, chain: chain, all: s.all, each: s.each}
 	if next.each == nil || number <= s.number || number-s.number > mostFollowed {
@@ -77,9 +76,13 @@ type ground struct {
 
 // follow is the journal as it stands.
 func (d *desk) follow(ctx context.Context) (since, error) {
+	number, chain, err := d.store.Head(ctx)
+	if err != nil {
+		return since{}, err
+	}
 	d.mu.Lock()
 	defer d.mu.Unlock()
-	err := d.since.follow(ctx, d.store)
+	err = d.since.follow(ctx, d.store, number, chain)
 	return d.since, err
 }
 

@@ -24,7 +24,7 @@ type picture struct {
 
 const (
 	enveloped   = 10  // finished batches behind the course
-	curveSteps  = 160 // along the time axis
+	curveSteps  = 72  // along the time axis
 	pictureLag  = 6.0 // hours shown at least
 	lookAhead   = 1.3 // of the time to the end
 	mostAhead   = 21  // days shown after the last reading

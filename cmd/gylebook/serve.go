@@ -82,10 +82,10 @@ func (b *bench) serve(c *cli.Context) error {
 		if err != nil {
 			return err
 		}
-		// The first visitor does not wait for the forecasts.
+		// The first visitors do not wait for the forecasts.
 		ctx, stop := context.WithCancel(c.Context)
 		var ready sync.WaitGroup
-		ready.Go(func() { _, _ = d.Board(ctx) })
+		ready.Go(func() { d.warm(ctx) })
 		defer func() { stop(); ready.Wait() }()
 		return b.serving(c, server, pair)
 	})

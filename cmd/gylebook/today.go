@@ -2,7 +2,9 @@ package main
 
 import (
 	"context"
+	"runtime"
 	"slices"
+	"sync"
 	"time"
 
 	"github.com/urfave/cli/v2"
@@ -62,24 +64,36 @@ func standings(ctx context.Context, r journal.Reader, at time.Time, past bool) (
 	if err != nil {
 		return nil, err
 	}
-	histories := make([]outlook.History, len(open))
-	for i, rec := range open {
-		if histories[i], err = f.history(rec); err != nil {
-			return nil, err
-		}
-	}
 	plain := plainly(f.book)
 	list := make([]standing, len(open))
-	one := func(i int) { list[i] = f.standing(open[i], plain, histories[i], at) }
-	var apart []int
+	// Histories are read one after the other, and in the meantime the batches of those
+	// that are known are judged.
+	var work sync.WaitGroup
+	jobs := make(chan func(), len(open))
+	for range runtime.GOMAXPROCS(0) {
+		work.Go(func() {
+			for do := range jobs {
+				do()
+			}
+		})
+	}
 	for i, rec := range open {
+		var h outlook.History
+		if h, err = f.history(rec); err != nil {
+			break
+		}
+		one := func() { list[i] = f.standing(rec, plain, h, at) }
 		if blended(rec) {
-			one(i) // the book asks the reader about the other batch, and that stays in here
+			one() // the book asks the reader about the other batch, and that stays in here
 		} else {
-			apart = append(apart, i)
+			jobs <- one
 		}
 	}
-	outlook.Each(len(apart), func(k int) { one(apart[k]) })
+	close(jobs)
+	work.Wait()
+	if err != nil {
+		return nil, err
+	}
 	slices.SortStableFunc(list, byAttention)
 	return list, ctx.Err()
 }

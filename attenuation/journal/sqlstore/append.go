@@ -16,12 +16,52 @@ import (
 // entry before it, whatever the clock says.
 func (s *Store) Append(ctx context.Context, by string, now time.Time, draft func(journal.Reader) ([]journal.Body, error)) ([]journal.Entry, error) {
 	var made []journal.Entry
-	err := s.write(ctx, func(v *view) (bool, error) {
+	err := s.add(ctx, by, now, func(r journal.Reader) (iter.Seq2[journal.Body, error], error) {
+		bodies, err := draft(r)
+		if err != nil || len(bodies) == 0 {
+			return nil, err
+		}
+		return oneByOne(bodies), nil
+	}, func(e journal.Entry) { made = append(made, e) })
+	if err != nil {
+		return nil, err
+	}
+	return made, nil
+}
+
+func oneByOne(bodies []journal.Body) iter.Seq2[journal.Body, error] {
+	return func(yield func(journal.Body, error) bool) {
+		for _, b := range bodies {
+			if !yield(b, nil) {
+				return
+			}
+		}
+	}
+}
+
+// AppendEach implements journal.Store.
+func (s *Store) AppendEach(ctx context.Context, by string, now time.Time, draft func(journal.Reader) (iter.Seq2[journal.Body, error], error)) (first, last int64, err error) {
+	err = s.add(ctx, by, now, draft, func(e journal.Entry) {
+		if first == 0 {
+			first = e.Number
+		}
+		last = e.Number
+	})
+	if err != nil {
+		return 0, 0, err
+	}
+	return first, last, nil
+}
+
+// add appends the bodies of a draft and shows each entry to made. Without bodies
+// nothing is written.
+func (s *Store) add(ctx context.Context, by string, now time.Time, draft func(journal.Reader) (iter.Seq2[journal.Body, error], error), made func(journal.Entry)) error {
+	return s.write(ctx, func(v *view) (bool, error) {
 		bodies, err := draft(v)
 		if err != nil {
 			return false, drafted{err}
 		}
-		if len(bodies) == 0 {
+		if bodies == nil {
 			return false, nil
 		}
 		w, err := newWriter(ctx, v)
@@ -32,7 +72,11 @@ func (s *Store) Append(ctx context.Context, by string, now time.Time, draft func
 		if at.Before(w.at) {
 			at = w.at
 		}
-		for _, b := range bodies {
+		some := false
+		for b, err := range bodies {
+			if err != nil {
+				return false, drafted{err}
+			}
 			e := journal.Entry{Number: w.number + 1, RecordedAt: at, By: by, Body: plain(b)}
 			if err := w.check(ctx, e); err != nil {
 				return false, err
@@ -43,14 +87,11 @@ func (s *Store) Append(ctx context.Context, by string, now time.Time, draft func
 			if err := w.insert(ctx, e); err != nil {
 				return false, err
 			}
-			made = append(made, e)
+			made(e)
+			some = true
 		}
-		return true, nil
+		return some, nil
 	})
-	if err != nil {
-		return nil, err
-	}
-	return made, nil
 }
 
 // Restore implements journal.Store.
@@ -62,7 +103,7 @@ func (s *Store) Restore(ctx context.Context, entries iter.Seq2[journal.Entry, er
 			return false, err
 		}
 		if w.number != 0 {
-			return false, fmt.Errorf("%d entries: %w", w.number, journal.ErrNotEmpty)
+			return false, fmt.Errorf("entry %d is the last: %w", w.number, journal.ErrNotEmpty)
 		}
 		for e, err := range entries {
 			if err != nil {

@@ -61,27 +61,17 @@ func TestPlans(t *testing.T) {
 	id.args = []any{"B-1"}
 	last := openOnes
 	last.last = 3
-	type query struct {
-		text string
-		args []any
-	}
-	of := func(text string, args []any) query { return query{text, args} }
 	for name, c := range map[string]struct {
 		sel  selection
 		scan string // the one table that may be read from end to end
 	}{"season": {all, "SCAN b USING"}, "open": {openOnes, "SCAN o USING"}, "newest": {last, "SCAN o USING"}, "one": {id, ""}} {
-		for _, query := range []query{
-			of(c.sel.batchSQL(), c.sel.args), of(childSQL(c.sel, ogs)), of(childSQL(c.sel, limits)), of(childSQL(c.sel, readings)),
-			of(childSQL(c.sel, events)), of(childSQL(c.sel, given)), of(childSQL(c.sel, volumes)), of(childSQL(c.sel, closes)),
-		} {
-			for _, step := range plan(t, s, query.text, query.args...) {
-				if strings.Contains(step, "TEMP B-TREE") || strings.HasPrefix(step, "SCAN") && (c.scan == "" || !strings.HasPrefix(step, c.scan)) {
-					t.Errorf("%s: %s in %s", name, step, query.text)
-				}
+		for _, step := range planOf(t, s, c.sel) {
+			if strings.Contains(step, "TEMP B-TREE") || strings.HasPrefix(step, "SCAN") && (c.scan == "" || !strings.HasPrefix(step, c.scan)) {
+				t.Errorf("%s: %s", name, step)
 			}
 		}
 	}
-	bounded := slices.ContainsFunc(plan(t, s, of(childSQL(last, readings)).text, 2), func(step string) bool {
+	bounded := slices.ContainsFunc(planOf(t, s, last), func(step string) bool {
 		return strings.HasPrefix(step, "SEARCH c USING") && strings.Contains(step, "taken_ms>?")
 	})
 	if !bounded {
@@ -94,6 +84,13 @@ func TestPlans(t *testing.T) {
 			}
 		}
 	}
+}
+
+// planOf returns the steps by which records are read.
+func planOf(t *testing.T, s *Store, sel selection) []string {
+	t.Helper()
+	b := newBundles(sel, s.version)
+	return plan(t, s, sel.recordSQL(b.columns), slices.Concat(b.args, sel.args)...)
 }
 
 // plan returns the steps by which a query runs.

@@ -93,6 +93,18 @@ var readings = table[journal.Reading]{
 	},
 }
 
+// leanReadings have what figures are made of; the batch is that of the record.
+var leanReadings = table[journal.Reading]{
+	name:    readings.name,
+	columns: []string{"taken_at", "gravity_text", "gravity_scale", "temp_text", "temp_unit", "instrument", "gassy", "keep_reason"},
+	dest: func(r *journal.Reading) []any {
+		return []any{
+			stampOf{&r.TakenAt},
+			&r.Gravity.Text, &r.Gravity.Scale, &r.Temp.Text, &r.Temp.Unit, &r.Instrument, &r.Gassy, &r.Keep,
+		}
+	},
+}
+
 var events = table[journal.Event]{
 	name: "batch_event",
 	columns: []string{

@@ -64,7 +64,7 @@ func dsn(path string, how access, wait time.Duration) (string, error) {
 	if !strings.HasPrefix(slash, "/") {
 		slash = "/" + slash // a drive letter
 	}
-	return fmt.Sprintf("file://%s?%s&_txlock=immediate&_pragma=busy_timeout(%d)&_pragma=foreign_keys(1)&_pragma=synchronous(FULL)&_pragma=cache_size(-16000)",
+	return fmt.Sprintf("file://%s?%s&_txlock=immediate&_pragma=busy_timeout(%d)&_pragma=foreign_keys(1)&_pragma=synchronous(FULL)&_pragma=cache_size(-4000)",
 		escaped.Replace(slash), how, wait.Milliseconds()), nil
 }
 

@@ -59,6 +59,8 @@ func runTask(args []string) error {
 			return err
 		}
 		return appendTask(place, args[2], n, args[4] == "once")
+	case "each": // place
+		return eachTask(place)
 	case "look": // place
 		return lookTask(place)
 	case "create": // place

@@ -7,9 +7,8 @@ import (
 	"gylebook/attenuation/journal"
 )
 
-// selection says which batches are meant and in which order. Every statement that
-// reads them, or what hangs on them, takes the same one, so that the results run
-// side by side.
+// selection says which batches are meant, in which order, and how much of what hangs
+// on them.
 type selection struct {
 	from  string // tables, the first decides the order
 	where string
@@ -17,6 +16,8 @@ type selection struct {
 	args  []any
 	void  bool // void batches too, with the reason
 	last  int  // so many of the newest readings of each; 0 is all, noReadings none
+	lean  bool // only what figures are made of; not who entered it and when
+	moves bool // of what hangs on them the events alone
 }
 
 const noReadings = -1
@@ -29,7 +30,7 @@ var (
 )
 
 func selectionOf(f journal.Filter) selection {
-	s := selection{from: "batch b", order: "b.product, b.began_ms, b.id"}
+	s := selection{from: "batch b", order: "b.product, b.began_ms, b.id", lean: f.Lean}
 	where := []string{notVoid}
 	if s.void = f.Void; f.Void {
 		where[0] = "1"
@@ -44,7 +45,11 @@ func selectionOf(f journal.Filter) selection {
 		where, s.args = append(where, "b.yeast = ?"), append(s.args, f.Yeast)
 	}
 	if f.Year != 0 {
-		where = append(where, "b.began_ms >= ? AND b.began_ms < ?")
+		began := "b.began_ms"
+		if f.Product == "" {
+			began = "+" + began // not by the index of this alone: all would have to be sorted
+		}
+		where = append(where, began+" >= ? AND "+began+" < ?")
 		s.args = append(s.args, newYear(f.Year), newYear(f.Year+1))
 	}
 	if f.Open {
@@ -71,42 +76,13 @@ func finishedOnes(product, yeast string, before time.Time) selection {
 
 func newYear(y int) int64 { return time.Date(y, 1, 1, 0, 0, 0, 0, time.UTC).UnixMilli() }
 
-func (s selection) batchSQL() string {
-	reason := ""
+// recordSQL reads the batches, and in further columns what hangs on them.
+func (s selection) recordSQL(hung []string) string {
+	columns := []string{"b.number", batches.list("b")}
 	if s.void {
-		reason = ", (SELECT x.reason FROM void_entry x WHERE x.entry = b.number)"
+		columns = append(columns, "(SELECT x.reason FROM void_entry x WHERE x.entry = b.number)")
 	}
-	return "SELECT b.number, " + batches.list("b") + reason + " FROM " + s.from + " WHERE " + s.where + " ORDER BY " + s.order
-}
-
-// childSQL reads what hangs on the batches, in their order. The joins are written
-// in the order in which they are to run. Within a batch the rows are sorted later:
-// to sort them here too, all their columns would go through a sorter.
-func childSQL[B journal.Body](s selection, t table[B]) (query string, args []any) {
-	columns := strings.Split(t.list("c"), ", ")
-	entry, join, on := "c", "", ""
-	if !t.copies {
-		entry, join, on = "e", " CROSS JOIN entry e", " AND e.number = c.number"
-	}
-	where, args := s.where, s.args
-	owner := "batch"
-	if t.owner != "" {
-		// What a void batch took over was not taken.
-		owner = t.owner
-		on += " AND c." + owner + " <> '' AND NOT EXISTS (SELECT 1 FROM batch t CROSS JOIN void_entry y WHERE t.id = c.batch AND y.entry = t.number)"
-	}
-	switch {
-	case t.name != readings.name:
-	case s.last == noReadings:
-		where = "1 = 0 AND " + where
-	case s.last > 0:
-		// A bound on the key, so that the rows before it are not touched.
-		where, args = newest+" AND "+where, append([]any{s.last - 1}, args...)
-	}
-	return "SELECT c.number, x.reason, " + packed(append([]string{entry + ".recorded_at", entry + ".operator"}, columns...)) +
-		" FROM " + s.from + " CROSS JOIN " + t.name + " c" + join + " LEFT JOIN void_entry x ON x.entry = c.number" +
-		" WHERE c." + owner + " = b.id" + on + " AND " + where +
-		" ORDER BY " + s.order, args
+	return "SELECT " + strings.Join(append(columns, hung...), ", ") + " FROM " + s.from + " WHERE " + s.where + " ORDER BY " + s.order
 }
 
 // newest bounds readings to the newest of a batch. The least time stands for no

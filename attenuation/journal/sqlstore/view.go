@@ -171,6 +171,11 @@ func (s *Store) OpenLast(ctx context.Context, n int) ([]*journal.Record, error) 
 	return stored(ctx, s, func(v *view) ([]*journal.Record, error) { return v.OpenLast(ctx, n) })
 }
 
+// OpenPlaces implements journal.Reader.
+func (s *Store) OpenPlaces(ctx context.Context) ([]*journal.Record, error) {
+	return stored(ctx, s, func(v *view) ([]*journal.Record, error) { return v.OpenPlaces(ctx) })
+}
+
 // BatchIDs implements journal.Reader.
 func (s *Store) BatchIDs(ctx context.Context) ([]string, error) {
 	return stored(ctx, s, func(v *view) ([]string, error) { return v.BatchIDs(ctx) })
