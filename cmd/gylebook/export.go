@@ -23,7 +23,7 @@ func (b *bench) exportCommand() *cli.Command {
 			comma), tab.`,
 		Flags: []cli.Flag{
 			&cli.StringFlag{Name: "profile", Value: string(exchange.Standard), Usage: "`P` of the CSV: standard, spreadsheet-eu, tab"},
-			&cli.StringFlag{Name: "output", Aliases: []string{"o"}, Usage: "new `FILE` to write instead of stdout"},
+			&cli.StringFlag{Name: "output", Aliases: []string{"o", "out"}, Usage: "new `FILE` to write instead of stdout"},
 		},
 	}, `gylebook export -o season.jsonl
 		gylebook export --csv --profile spreadsheet-eu -o readings.csv`, b.export)
@@ -63,7 +63,7 @@ func (b *bench) export(c *cli.Context) error {
 			return exchange.WriteReadings(c.Context, w, s, profile, book)
 		}
 		if file != "" {
-			err = intoFile(file, write)
+			err = intoFile(file, ownOnly, write)
 		} else {
 			err = write(b.out)
 		}
@@ -97,36 +97,6 @@ func (b *bench) freeName(name string) error {
 
 func occupied(name string) error {
 	return &exitError{exitCannotWrite, name + " exists; choose another name", ""}
-}
-
-// intoFile writes beside a new file and gives it its name when it is whole. A file
-// that is there is left alone.
-func intoFile(name string, write func(io.Writer) error) error {
-	f, err := os.CreateTemp(filepath.Dir(name), "."+filepath.Base(name)+"-*")
-	if err != nil {
-		return cannotWrite(name, err)
-	}
-	defer unfinished.add(f.Name())()
-	defer func() { _ = os.Remove(f.Name()) }()
-	if err := write(f); err != nil {
-		_ = f.Close()
-		return err
-	}
-	if err := errors.Join(f.Sync(), f.Close()); err != nil {
-		return cannotWrite(name, err)
-	}
-	// A link never takes the place of a file; where there are no links, a look
-	// just before has to do.
-	if err = os.Link(f.Name(), name); err == nil {
-		return nil
-	}
-	if _, there := os.Lstat(name); there == nil {
-		return occupied(name)
-	}
-	if err := os.Rename(f.Name(), name); err != nil {
-		return cannotWrite(name, err)
-	}
-	return nil
 }
 
 // cannotWrite names the file that was asked for, not the one written beside it.

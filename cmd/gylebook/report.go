@@ -1,7 +1,6 @@
 package main
 
 import (
-	"fmt"
 	"io"
 	"os"
 	"path/filepath"
@@ -55,7 +54,7 @@ func (b *bench) pageInto(c *cli.Context, write func(io.Writer) error) error {
 	} else if err := b.freeName(name); err != nil {
 		return err
 	}
-	if err := into(name, write); err != nil {
+	if err := into(name, everyone, write); err != nil {
 		return err
 	}
 	b.note("note: wrote %s", tables.Clean(name))
@@ -92,29 +91,4 @@ func pictureForm(name string) string {
 		return ext[1:]
 	}
 	return ""
-}
-
-// overFile writes beside a file that is there and takes its place when it is whole.
-func overFile(name string, write func(io.Writer) error) error {
-	f, err := os.CreateTemp(filepath.Dir(name), "."+filepath.Base(name)+"-*")
-	if err != nil {
-		return cannotWrite(name, err)
-	}
-	defer unfinished.add(f.Name())()
-	defer func() { _ = os.Remove(f.Name()) }()
-	if err := write(f); err != nil {
-		_ = f.Close()
-		return err
-	}
-	err = f.Sync()
-	if closed := f.Close(); err == nil {
-		err = closed
-	}
-	if err == nil {
-		err = os.Rename(f.Name(), name)
-	}
-	if err != nil {
-		return cannotWrite(name, fmt.Errorf("%w", err))
-	}
-	return nil
 }

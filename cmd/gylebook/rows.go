@@ -101,7 +101,7 @@ func (b *bench) rows(c *cli.Context, job rowsJob) error {
 		if err := b.freeName(name); err != nil {
 			return err
 		}
-		err = intoFile(name, work)
+		err = intoFile(name, ownOnly, work)
 	} else {
 		err = work(b.out)
 	}

@@ -189,7 +189,7 @@ func keepPrivate(name string, content []byte) error {
 	if err := os.MkdirAll(filepath.Dir(whole), 0o700); err != nil {
 		return cannotWrite(whole, err)
 	}
-	return overFile(whole, func(w io.Writer) error {
+	return overFile(whole, ownOnly, func(w io.Writer) error {
 		_, err := w.Write(content)
 		return err
 	})
