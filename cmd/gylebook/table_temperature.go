@@ -2,7 +2,6 @@ package main
 
 import (
 	"fmt"
-	"math"
 	"strconv"
 
 	"github.com/urfave/cli/v2"
@@ -39,17 +38,7 @@ func (b *bench) temperatureChart(c *cli.Context) (sheet, error) {
 	if err != nil {
 		return sheet{}, err
 	}
-	def := span{5, 35, 1}
-	if b.set.units == asread.F {
-		def = span{40, 96, 2}
-	}
-	rows, err := spanOf(c, def, func(text string) (float64, error) {
-		t, err := b.temperature(text)
-		if b.set.units == asread.F {
-			return t.C.Fahrenheit(), err
-		}
-		return float64(t.C), err
-	})
+	rows, err := b.degreesOf(c, span{5, 35, 1}, span{40, 96, 2})
 	if err != nil {
 		return sheet{}, err
 	}
@@ -57,17 +46,13 @@ func (b *bench) temperatureChart(c *cli.Context) (sheet, error) {
 	f := tempcorr.Float{Scale: scale, Basis: r.basis, Expansion: r.body.Expansion}
 	s := sheet{name: "table", columns: []string{"sample_temp_c"}}
 	p := scale.Info().Decimals
-	head, best := "°C", "15 and 25 °C"
-	if b.set.units == asread.F {
-		head, best = "°F", "59 and 77 °F"
-	}
-	liquid := "before fermentation"
-	if r.og != "" {
-		liquid = "fermenting from " + r.og
+	best := "15 and 25 °C"
+	if rows.unit == asread.F {
+		best = "59 and 77 °F"
 	}
 	t := tables.Table{
-		Title:   fmt.Sprintf("add to a reading in %s %s, %s; %s", scale.Info().Symbol, r.basis, r.body.ID, liquid),
-		Columns: []tables.Column{{Head: head, Align: tables.Right}},
+		Title:   fmt.Sprintf("add to a reading in %s %s, %s; %s", scale.Info().Symbol, r.basis, r.body.ID, r.liquid()),
+		Columns: []tables.Column{{Head: rows.head(), Align: tables.Right}},
 		Foot:    []string{fmt.Sprintf("%s (%s); best between %s; instrument error not included", m.ID, m.Source.Where, best)},
 	}
 	marks := temperatureMarks[scale]
@@ -75,26 +60,16 @@ func (b *bench) temperatureChart(c *cli.Context) (sheet, error) {
 		return s, usageError("", "--scale: read %s, wanted a scale that a hydrometer is divided in", scale)
 	}
 	for _, mark := range marks {
-		text := strconv.FormatFloat(mark, 'f', -1, 64)
-		if scale == gravity.ScaleSG {
-			text = fixed(mark, 3)
-		}
+		text := markText(scale, mark)
 		s.columns = append(s.columns, "correction_"+scale.String()+"_at_"+text)
 		t.Columns = append(t.Columns, tables.Column{Head: text, Align: tables.Right})
 	}
-	err = rows.each(func(v float64) error {
-		temp := gravity.Celsius(v)
-		if b.set.units == asread.F {
-			temp = gravity.FromFahrenheit(v)
-		}
+	err = rows.each(func(temp gravity.Celsius, text string) error {
 		if temp < tempcorr.MinTemp || temp > tempcorr.MaxTemp {
 			return &method.RangeError{What: "sample temperature", Got: float64(temp), Lo: 0, Hi: 60, Unit: "°C"}
 		}
 		values := []any{float64(temp)}
-		cells := []string{fixed(v, 0)}
-		if v != math.Trunc(v) {
-			cells[0] = fixed(v, 1)
-		}
+		cells := []string{text}
 		for _, mark := range marks {
 			got, err := m.Fn(f, mark, tempcorr.Sample{T: temp, OE: r.oe})
 			if err != nil {
@@ -114,6 +89,22 @@ func (b *bench) temperatureChart(c *cli.Context) (sheet, error) {
 	})
 	s.tables = []tables.Table{t}
 	return s, err
+}
+
+// markText is a reading over a column.
+func markText(scale gravity.Scale, mark float64) string {
+	if scale == gravity.ScaleSG {
+		return fixed(mark, 3)
+	}
+	return strconv.FormatFloat(mark, 'f', -1, 64)
+}
+
+// liquid says what a chart holds for.
+func (r reader) liquid() string {
+	if r.og != "" {
+		return "fermenting from " + r.og
+	}
+	return "before fermentation"
 }
 
 // explainMark is the correction of one reading step by step; a chart has no

@@ -16,7 +16,7 @@ type Figure struct {
 	Text    []string // the same as the picture, in words
 }
 
-var figurePage = parsed("figure", `<figure{{with .ID}} id="{{.}}"{{end}}>
+var figurePage = Parsed("figure", `<figure{{with .ID}} id="{{.}}"{{end}}>
 <div class="picture">{{if .SVG}}{{.SVG}}{{else}}<img src="{{.Src}}" alt="{{.Alt}}">{{end}}</div>
 {{- if or .Caption .Text}}
 <figcaption>

@@ -10,7 +10,7 @@ import (
 	"gylebook/tables"
 )
 
-var ladderPage = parsed("ladder", `<div class="ladder">
+var ladderPage = Parsed("ladder", `<div class="ladder">
 {{- if or .Number .Lead}}
 <p class="answer{{if .Wordy}} wordy{{end}}"><strong>{{with .Number}}<b>{{.}}</b>{{end}}{{.Lead}}</strong>{{range .More}} <span>{{.}}</span>{{end}}</p>
 {{- end}}

@@ -9,7 +9,7 @@ import (
 // caution is the code of a note that warns of harm.
 const caution = "caution"
 
-var notesPage = parsed("notes", `
+var notesPage = Parsed("notes", `
 {{- with .Cautions}}<ul class="cautions">
 {{- range .}}
 <li><strong>Caution:</strong> {{.}}</li>

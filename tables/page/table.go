@@ -7,7 +7,7 @@ import (
 	"gylebook/tables"
 )
 
-var tablePage = parsed("table", `<div class="table{{with .Size}} {{.}}{{end}}">
+var tablePage = Parsed("table", `<div class="table{{with .Size}} {{.}}{{end}}">
 <div class="scroll"{{if .Region}} role="region" tabindex="0" aria-label="{{.Name}}"{{end}}>
 <table>
 <caption{{if not .Title}} class="unseen"{{end}}><span>{{.Name}}</span></caption>

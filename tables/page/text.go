@@ -62,8 +62,8 @@ func fill(t func() *template.Template, data any) template.HTML {
 	return template.HTML(b.String())
 }
 
-// parsed parses a template when it is first used: most runs of the program show no
-// page, and every one of them would pay for it.
-func parsed(name, text string) func() *template.Template {
+// Parsed parses a template when it is first used: most runs of the program show no
+// page, and every one of them would pay for it. A text that is no template panics then.
+func Parsed(name, text string) func() *template.Template {
 	return sync.OnceValue(func() *template.Template { return template.Must(template.New(name).Parse(text)) })
 }

@@ -41,7 +41,7 @@ type Sheet struct {
 //go:embed card.css
 var cardStyle string
 
-var cardPage = parsed("card", `<!DOCTYPE html>
+var cardPage = page.Parsed("card", `<!DOCTYPE html>
 <html lang="en">
 <head>
 <meta charset="utf-8">

@@ -45,7 +45,7 @@ const contentsFrom = 4
 //go:embed report.css
 var reportStyle string
 
-var reportPage = parsed("report", `<!DOCTYPE html>
+var reportPage = page.Parsed("report", `<!DOCTYPE html>
 <html lang="{{.Lang}}">
 <head>
 <meta charset="utf-8">

@@ -5,7 +5,6 @@ import (
 	"fmt"
 	"html/template"
 	"io"
-	"sync"
 	"time"
 )
 
@@ -37,10 +36,4 @@ func shown(at time.Time) string {
 		return at.Format("2006-01-02 15:04") + " UTC"
 	}
 	return at.Format("2006-01-02 15:04 -07:00")
-}
-
-// parsed parses a template when it is first used: most runs of the program write no
-// document, and every one of them would pay for it.
-func parsed(name, text string) func() *template.Template {
-	return sync.OnceValue(func() *template.Template { return template.Must(template.New(name).Parse(text)) })
 }
