@@ -65,7 +65,11 @@ func (l Ladder) WriteText(w io.Writer, width int) error {
 		if i == 0 {
 			b.WriteByte('\n')
 		}
-		for j, part := range Wrap(line, max(width-2*gap, 1)) {
+		parts := []string{line} // what fits keeps its own columns
+		if Width(line) > width-2*gap {
+			parts = Wrap(line, max(width-2*gap, 1))
+		}
+		for j, part := range parts {
 			b.WriteString(strings.Repeat(" ", gap*min(j+1, 2)) + part + "\n")
 		}
 	}

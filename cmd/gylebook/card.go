@@ -55,7 +55,13 @@ func (b *bench) scalesCard(c *cli.Context) (report.Card, error) {
 		return report.Card{}, err
 	}
 	b.set.scale = gravity.ScaleSG
-	rows, err := b.gravitySpan(c, span{0.990, 1.160, 0.002})
+	rows, err := spanOf(c, span{0.990, 1.160, 0.002}, func(text string) (float64, error) {
+		r, err := b.reading(text)
+		if err == nil && r.Scale != gravity.ScaleSG {
+			err = dataError("type an SG such as 1.040; gylebook table scales --scale "+r.Scale.String()+" runs over others", "read %s, wanted a limit in SG", r.ReadAs())
+		}
+		return r.Value, err
+	})
 	if err != nil {
 		return report.Card{}, err
 	}

@@ -165,8 +165,8 @@ func seasonTable(groups []season.Group, title string, width int, stacked bool) t
 		// The width of the days is left to machines: the line is full.
 		t.Rows = append(t.Rows, row[:len(t.Columns)])
 	}
-	if !stacked {
-		squeeze(&t, width, 0, 1)
+	if !stacked && !squeeze(&t, width, 0, 1) {
+		return seasonTable(groups, title, width, true) // it would be stacked all the same
 	}
 	return t
 }

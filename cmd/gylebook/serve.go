@@ -67,7 +67,11 @@ func (b *bench) serve(c *cli.Context) error {
 		return err
 	}
 	if err := web.CheckListen(c.String("listen"), secret != nil, pair != nil); err != nil {
-		return usageError("gylebook serve --new-passphrase, then gylebook serve --new-certificate --host NAME", "--listen: %v", err)
+		hint := "gylebook serve --new-passphrase, then gylebook serve --new-certificate --host NAME"
+		if web.CheckListen(c.String("listen"), true, true) != nil { // no address at all
+			hint = "type an address and a port, such as " + defaultListen
+		}
+		return usageError(hint, "--listen: %v", err)
 	}
 	return b.withJournal(c.Context, func(s journal.Store) error {
 		d := &desk{store: s, flags: deskFlags(c), now: b.clock}

@@ -29,13 +29,18 @@ func (b *bench) todaySheet(list []standing, at time.Time) sheet {
 	}
 	first, when := fmt.Sprintf("%d open; %d late, rising or standing high", len(list), attend), at.Format("Mon 2 Jan 2006 15:04")
 	title := first + "; " + when
+	table, fits := todayTable(list, title, b.set.width)
 	switch {
-	case b.set.width < 60 && b.set.format == tables.Text && !b.set.plain:
-		s.ladder = &tables.Ladder{Answer: []string{first, when}, Lines: narrowLines(list, b.set.width)}
 	case len(list) == 0:
 		s.ladder = &tables.Ladder{Answer: []string{title}}
+	case !fits && b.set.format == tables.Text && !b.set.plain:
+		room := b.set.width
+		if room >= 60 {
+			room -= 4 // a ladder that is not stacked sets its lines in
+		}
+		s.ladder = &tables.Ladder{Answer: []string{first, when}, Lines: narrowLines(list, room)}
 	default:
-		s.tables = []tables.Table{todayTable(list, title, b.set.width)}
+		s.tables = []tables.Table{table}
 	}
 	return s
 }
@@ -90,9 +95,10 @@ func (s standing) cells() []string {
 	return cells
 }
 
-func todayTable(list []standing, title string, width int) tables.Table {
+// todayTable is a line a batch; fits is false when it is wider than width.
+func todayTable(list []standing, title string, width int) (t tables.Table, fits bool) {
 	right := func(head string) tables.Column { return tables.Column{Head: head, Align: tables.Right} }
-	t := tables.Table{
+	t = tables.Table{
 		Title: title,
 		Columns: []tables.Column{
 			{Head: "vessel"}, {Head: "product"}, right("day"), right("h"), right("SG"), right("fall"), right("app."), {Head: "word"}, right("next"),
@@ -102,13 +108,12 @@ func todayTable(list []standing, title string, width int) tables.Table {
 	for _, one := range list {
 		t.Rows = append(t.Rows, one.cells())
 	}
-	squeeze(&t, width, 1, 0)
-	return t
+	return t, squeeze(&t, width, 1, 0)
 }
 
 // squeeze cuts the cells of some columns, the first one first, until the table
-// fits width. Eight columns of each are left.
-func squeeze(t *tables.Table, width int, columns ...int) {
+// fits width, and reports whether it does. Eight columns of each are left.
+func squeeze(t *tables.Table, width int, columns ...int) (fits bool) {
 	const least, gap = 8, 2
 	widths := make([]int, len(t.Columns))
 	total := gap * (len(t.Columns) - 1)
@@ -126,6 +131,7 @@ func squeeze(t *tables.Table, width int, columns ...int) {
 			row[i] = clip(row[i], keep)
 		}
 	}
+	return total <= width
 }
 
 // clip cuts text to width columns, with an ellipsis at the end of what was cut.
